@@ -1,0 +1,1 @@
+//! Statistics of stops and readings.

@@ -1,0 +1,1 @@
+//! What is used: the window and the command line.

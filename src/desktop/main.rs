@@ -1,0 +1,2 @@
+//! The program `slidehalt`.
+fn main() {}

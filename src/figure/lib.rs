@@ -1,0 +1,1 @@
+//! What is drawn: figures as lines, areas and text in millimetres.

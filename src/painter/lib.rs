@@ -1,0 +1,1 @@
+//! How it shows: egui's meshes to pixels on the CPU.

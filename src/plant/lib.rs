@@ -1,0 +1,1 @@
+//! What is kept: the plant folder on disk.

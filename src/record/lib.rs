@@ -1,0 +1,1 @@
+//! What is printed: the record of one press.

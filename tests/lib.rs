@@ -1,0 +1,1 @@
+//! What is checked: the main job against the outside world.
