@@ -1,3 +1,22 @@
-//! What is true: rules, statistics, motion and answers. Pure: no file, clock, random number, log, window or thread.
+//! What is true: rules, statistics, motion and answers.
+//!
+//! Pure: no file, clock, random number, log, window or thread. Safety arithmetic is whole-number arithmetic on exact
+//! [`units`]; statistics and motion use floating point and enter it through [`units::Time::from_ms_up`] alone. Every result is
+//! a derivation ([`steps::WorkedSteps`]) whose lines carry their source and [`basis::Basis`].
+
+pub mod basis;
+pub mod calendar;
+pub mod decimal;
+pub mod limits;
 pub mod motion;
+pub mod plant_settings;
+pub mod press;
+pub mod refusal;
+pub mod round;
+pub mod rules;
+pub mod safeguard;
 pub mod statistics;
+pub mod steps;
+pub mod stop_test;
+pub mod units;
+pub mod value_taken;

@@ -57,24 +57,17 @@ pub enum StatisticsError {
 impl fmt::Display for StatisticsError {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         match self {
-            Self::TooFewValues { needed, given } => write!(
-                f,
-                "There are {given} values. At least {needed} are needed. Add more values."
-            ),
+            Self::TooFewValues { needed, given } => {
+                write!(f, "There are {given} values. At least {needed} are needed. Add more values.")
+            }
             Self::NotUsable { what, index, given } => write!(
                 f,
                 "Number {} of the list ({what}) is {given}. It must be a finite number of ordinary size. Correct the entry.",
                 index + 1
             ),
-            Self::OutOfRange {
-                what,
-                given,
-                least,
-                greatest,
-            } => write!(
-                f,
-                "The {what} is {given}. It must be from {least} to {greatest}. Choose another value."
-            ),
+            Self::OutOfRange { what, given, least, greatest } => {
+                write!(f, "The {what} is {given}. It must be from {least} to {greatest}. Choose another value.")
+            }
             Self::DifferentLengths { first, second } => write!(
                 f,
                 "One list has {first} values and the other {second}. Both must have the same number. Complete the shorter one."
@@ -100,21 +93,11 @@ pub(crate) fn check_usable(what: &'static str, values: &[f64]) -> Result<(), Sta
 }
 
 /// Refuses a setting that is not a number from `least` to `greatest`.
-pub(crate) fn check_range(
-    what: &'static str,
-    given: f64,
-    least: f64,
-    greatest: f64,
-) -> Result<(), StatisticsError> {
+pub(crate) fn check_range(what: &'static str, given: f64, least: f64, greatest: f64) -> Result<(), StatisticsError> {
     if least <= given && given <= greatest {
         Ok(())
     } else {
-        Err(StatisticsError::OutOfRange {
-            what,
-            given,
-            least,
-            greatest,
-        })
+        Err(StatisticsError::OutOfRange { what, given, least, greatest })
     }
 }
 

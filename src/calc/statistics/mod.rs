@@ -13,6 +13,5 @@ mod tolerance;
 pub use error::{MAGNITUDE_MAX, StatisticsError};
 pub use summary::Summary;
 pub use tolerance::{
-    COUNT_MAX, SHARE_LEAST, SHARE_MAX, confidence_of_greatest, tolerance_factor_one_sided,
-    upper_tolerance_bound,
+    COUNT_MAX, SHARE_LEAST, SHARE_MAX, confidence_of_greatest, tolerance_factor_one_sided, upper_tolerance_bound,
 };

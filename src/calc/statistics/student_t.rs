@@ -60,37 +60,24 @@ impl NoncentralT {
         for node in &mut nodes {
             node.1 /= total;
         }
-        Self {
-            degrees_of_freedom,
-            delta,
-            nodes,
-        }
+        Self { degrees_of_freedom, delta, nodes }
     }
 
     /// P(T > t), for t >= 0.
     pub(crate) fn above(&self, t: f64) -> f64 {
-        self.nodes
-            .iter()
-            .map(|&(u, weight)| weight * normal_above(t * u - self.delta))
-            .sum()
+        self.nodes.iter().map(|&(u, weight)| weight * normal_above(t * u - self.delta)).sum()
     }
 
     /// Density at t, for t >= 0.
     fn density(&self, t: f64) -> f64 {
-        self.nodes
-            .iter()
-            .map(|&(u, weight)| weight * u * normal_density(t * u - self.delta))
-            .sum()
+        self.nodes.iter().map(|&(u, weight)| weight * u * normal_density(t * u - self.delta)).sum()
     }
 
     /// The t that is exceeded with probability `tail`, for 0 < tail <= 0.5.
     ///
     /// Since delta >= 0 and tail <= 0.5, this t is not below 0.
     pub(crate) fn upper_quantile(&self, tail: f64) -> f64 {
-        assert!(
-            0.0 < tail && tail <= 0.5,
-            "the tail is {tail}, outside 0 to 0.5"
-        );
+        assert!(0.0 < tail && tail <= 0.5, "the tail is {tail}, outside 0 to 0.5");
         let mut low = 0.0;
         let mut high = self.delta + normal_upper_quantile(tail) + 1.0;
         while self.above(high) > tail {
@@ -107,11 +94,7 @@ impl NoncentralT {
                 high = t;
             }
             let newton = t + above * libm::log(above / tail) / self.density(t);
-            let next = if low <= newton && newton <= high {
-                newton
-            } else {
-                0.5 * (low + high)
-            };
+            let next = if low <= newton && newton <= high { newton } else { 0.5 * (low + high) };
             let moved = (next - t).abs();
             t = next;
             if moved <= 4.0 * f64::EPSILON * t {
@@ -164,10 +147,7 @@ mod tests {
             for delta in [0.0, 0.5, 3.0, 400.0] {
                 let got = NoncentralT::new(nu, delta).above(0.0);
                 let want = normal_above(-delta);
-                assert!(
-                    (got - want).abs() < 1e-15 * 4.0,
-                    "{nu} {delta}: {got} {want}"
-                );
+                assert!((got - want).abs() < 1e-15 * 4.0, "{nu} {delta}: {got} {want}");
             }
         }
     }
@@ -182,10 +162,7 @@ mod tests {
                 for tail in [0.5, 0.05, 1e-6] {
                     let one = coarse.upper_quantile(tail);
                     let other = fine.upper_quantile(tail);
-                    assert!(
-                        (one - other).abs() <= 1e-11 * (1.0 + one),
-                        "{nu} {z} {tail}: {one} {other}"
-                    );
+                    assert!((one - other).abs() <= 1e-11 * (1.0 + one), "{nu} {z} {tail}: {one} {other}");
                 }
             }
         }

@@ -11,19 +11,12 @@ pub(crate) struct CompensatedSum {
 
 impl CompensatedSum {
     pub(crate) fn zero() -> Self {
-        Self {
-            sum: 0.0,
-            lost: 0.0,
-        }
+        Self { sum: 0.0, lost: 0.0 }
     }
 
     pub(crate) fn add(&mut self, term: f64) {
         let next = self.sum + term;
-        self.lost += if self.sum.abs() >= term.abs() {
-            (self.sum - next) + term
-        } else {
-            (term - next) + self.sum
-        };
+        self.lost += if self.sum.abs() >= term.abs() { (self.sum - next) + term } else { (term - next) + self.sum };
         self.sum = next;
     }
 

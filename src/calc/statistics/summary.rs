@@ -33,10 +33,7 @@ impl Summary {
     /// ```
     pub fn of(values: &[f64]) -> Result<Self, StatisticsError> {
         if values.is_empty() {
-            return Err(StatisticsError::TooFewValues {
-                needed: 1,
-                given: 0,
-            });
+            return Err(StatisticsError::TooFewValues { needed: 1, given: 0 });
         }
         check_usable("value", values)?;
         let mean = mean_of(values);
@@ -85,8 +82,7 @@ impl Summary {
 
     /// Standard deviation of the mean, s / sqrt(n); none for a single value.
     pub fn standard_deviation_of_mean(&self) -> Option<f64> {
-        self.standard_deviation
-            .map(|s| s / libm::sqrt(self.count as f64))
+        self.standard_deviation.map(|s| s / libm::sqrt(self.count as f64))
     }
 }
 
@@ -95,10 +91,7 @@ fn squares_about(values: &[f64], mean: f64) -> f64 {
     let squares = sum_of(values.iter().map(|x| (x - mean) * (x - mean)));
     let remainder = sum_of(values.iter().map(|x| x - mean));
     let corrected = squares - remainder * remainder / values.len() as f64;
-    assert!(
-        corrected >= 0.0,
-        "a sum of squares fell below zero: {corrected}"
-    );
+    assert!(corrected >= 0.0, "a sum of squares fell below zero: {corrected}");
     corrected
 }
 
@@ -122,13 +115,7 @@ mod tests {
 
     #[test]
     fn refusals() {
-        assert_eq!(
-            Summary::of(&[]),
-            Err(StatisticsError::TooFewValues {
-                needed: 1,
-                given: 0
-            })
-        );
+        assert_eq!(Summary::of(&[]), Err(StatisticsError::TooFewValues { needed: 1, given: 0 }));
         for wrong in [f64::NAN, f64::INFINITY, f64::NEG_INFINITY, 2.0e100] {
             let refused = Summary::of(&[1.0, wrong]);
             assert!(

@@ -39,16 +39,9 @@ pub const COUNT_MAX: usize = 1_000_000;
 /// let k = calc::statistics::tolerance_factor_one_sided(43, 0.90, 0.99).unwrap();
 /// assert!((k - 1.8740).abs() < 0.00005);
 /// ```
-pub fn tolerance_factor_one_sided(
-    count: usize,
-    coverage: f64,
-    confidence: f64,
-) -> Result<f64, StatisticsError> {
+pub fn tolerance_factor_one_sided(count: usize, coverage: f64, confidence: f64) -> Result<f64, StatisticsError> {
     if count < 2 {
-        return Err(StatisticsError::TooFewValues {
-            needed: 2,
-            given: count,
-        });
+        return Err(StatisticsError::TooFewValues { needed: 2, given: count });
     }
     check_range("number of values", count as f64, 2.0, COUNT_MAX as f64)?;
     check_range("coverage", coverage, SHARE_LEAST, SHARE_MAX)?;
@@ -64,18 +57,11 @@ pub fn tolerance_factor_one_sided(
 ///
 /// # Refuses   a single value, and what [`tolerance_factor_one_sided`] refuses
 /// # Source    as there
-pub fn upper_tolerance_bound(
-    summary: &Summary,
-    coverage: f64,
-    confidence: f64,
-) -> Result<f64, StatisticsError> {
+pub fn upper_tolerance_bound(summary: &Summary, coverage: f64, confidence: f64) -> Result<f64, StatisticsError> {
     let k = tolerance_factor_one_sided(summary.count(), coverage, confidence)?;
     match summary.standard_deviation() {
         Some(s) => Ok(summary.mean() + k * s),
-        None => Err(StatisticsError::TooFewValues {
-            needed: 2,
-            given: summary.count(),
-        }),
+        None => Err(StatisticsError::TooFewValues { needed: 2, given: summary.count() }),
     }
 }
 
@@ -93,10 +79,7 @@ pub fn upper_tolerance_bound(
 /// ```
 pub fn confidence_of_greatest(count: usize, coverage: f64) -> Result<f64, StatisticsError> {
     if count < 1 {
-        return Err(StatisticsError::TooFewValues {
-            needed: 1,
-            given: count,
-        });
+        return Err(StatisticsError::TooFewValues { needed: 1, given: count });
     }
     check_range("coverage", coverage, SHARE_LEAST, SHARE_MAX)?;
     Ok(-libm::expm1(count as f64 * libm::log(coverage)))
@@ -111,10 +94,7 @@ mod tests {
         for count in [0, 1] {
             assert_eq!(
                 tolerance_factor_one_sided(count, 0.95, 0.95),
-                Err(StatisticsError::TooFewValues {
-                    needed: 2,
-                    given: count
-                })
+                Err(StatisticsError::TooFewValues { needed: 2, given: count })
             );
         }
         for wrong in [0.0, 0.499, 0.999_999_1, 1.0, 95.0, -0.95, f64::NAN] {

@@ -17,18 +17,12 @@ pub fn printed(what: &str, got: f64, printed: &str) {
     let half = 0.5 * 10f64.powi(-(decimals as i32));
     let want: f64 = printed.parse().unwrap();
     // A hair more than half a unit, because the printed decimal is itself not exact in binary.
-    assert!(
-        (got - want).abs() <= half * (1.0 + 1e-9),
-        "{what}: got {got}, printed {printed}"
-    );
+    assert!((got - want).abs() <= half * (1.0 + 1e-9), "{what}: got {got}, printed {printed}");
 }
 
 /// Rows of a stored file: lines that begin with `#` and the line of heads are left out.
 pub fn rows(file: &str) -> impl Iterator<Item = Vec<&str>> {
-    file.lines()
-        .filter(|line| !line.starts_with('#') && !line.is_empty())
-        .skip(1)
-        .map(|line| line.split(',').collect())
+    file.lines().filter(|line| !line.starts_with('#') && !line.is_empty()).skip(1).map(|line| line.split(',').collect())
 }
 
 /// A cell as a number.

@@ -1,18 +1,10 @@
 //! One-sided normal tolerance factors.
 
 use crate::compare::{close, number, printed, rows};
-use calc::statistics::{
-    Summary, confidence_of_greatest, tolerance_factor_one_sided, upper_tolerance_bound,
-};
+use calc::statistics::{Summary, confidence_of_greatest, tolerance_factor_one_sided, upper_tolerance_bound};
 
 /// Coverage and confidence of the columns of [`TABLE`].
-const COLUMNS: [(f64, f64); 5] = [
-    (0.90, 0.95),
-    (0.95, 0.95),
-    (0.99, 0.95),
-    (0.95, 0.99),
-    (0.99, 0.99),
-];
+const COLUMNS: [(f64, f64); 5] = [(0.90, 0.95), (0.95, 0.95), (0.99, 0.95), (0.95, 0.99), (0.99, 0.99)];
 
 /// ISO 16269-6, one-sided interval, standard deviation unknown (table values from memory, and recomputed with scipy 1.17.1 as
 /// nct.ppf(c, n - 1, z_p sqrt n) / sqrt n; the two agree).
@@ -62,23 +54,13 @@ fn nist_handbook_example() {
 /// Derived by hand from the formulas and the table above.
 #[test]
 fn ten_stops() {
-    let stops = [
-        182.0, 185.0, 181.0, 184.0, 186.0, 183.0, 182.0, 187.0, 184.0, 183.0,
-    ];
+    let stops = [182.0, 185.0, 181.0, 184.0, 186.0, 183.0, 182.0, 187.0, 184.0, 183.0];
     let summary = Summary::of(&stops).unwrap();
     printed("mean", summary.mean(), "183.7");
     printed("s", summary.standard_deviation().unwrap(), "1.888562");
     printed("mean + 3 s", summary.mean_plus_3_s().unwrap(), "189.366");
-    printed(
-        "95/95",
-        upper_tolerance_bound(&summary, 0.95, 0.95).unwrap(),
-        "189.198",
-    );
-    printed(
-        "99/95",
-        upper_tolerance_bound(&summary, 0.99, 0.95).unwrap(),
-        "191.219",
-    );
+    printed("95/95", upper_tolerance_bound(&summary, 0.95, 0.95).unwrap(), "189.198");
+    printed("99/95", upper_tolerance_bound(&summary, 0.99, 0.95).unwrap(), "191.219");
     assert_eq!(summary.greatest(), 187.0);
 }
 
@@ -91,12 +73,7 @@ fn against_34_digits() {
         let k = tolerance_factor_one_sided(n, p, c).unwrap();
         // 0.999999 has no exact binary form: 1 - c then carries a relative error of 3e-11, and k with it.
         let relative = if p.max(c) > 0.9999 { 1e-10 } else { 2e-13 };
-        close(
-            &format!("n {n} p {p} c {c}, mpmath"),
-            k,
-            number(row[3]),
-            relative,
-        );
+        close(&format!("n {n} p {p} c {c}, mpmath"), k, number(row[3]), relative);
         count += 1;
     }
     assert_eq!(count, 117);
@@ -106,31 +83,17 @@ fn against_34_digits() {
 #[test]
 fn against_scipy() {
     for row in rows(include_str!("stored/tolerance_factors.csv")) {
-        let (n, p, c): (usize, f64, f64) =
-            (row[0].parse().unwrap(), number(row[1]), number(row[2]));
+        let (n, p, c): (usize, f64, f64) = (row[0].parse().unwrap(), number(row[1]), number(row[2]));
         let k = tolerance_factor_one_sided(n, p, c).unwrap();
-        close(
-            &format!("n {n} p {p} c {c}, scipy"),
-            k,
-            number(row[4]),
-            1e-11,
-        );
+        close(&format!("n {n} p {p} c {c}, scipy"), k, number(row[4]), 1e-11);
     }
 }
 
 /// c = 1 - p^n: n 25 0.7226, n 59 0.9515 (95 %), n 299 0.9505 (99 %). Direct from the formula.
 #[test]
 fn the_greatest_of_n() {
-    for (count, coverage, want) in [
-        (25, 0.95, "0.7226"),
-        (59, 0.95, "0.9515"),
-        (299, 0.99, "0.9505"),
-    ] {
-        printed(
-            "confidence",
-            confidence_of_greatest(count, coverage).unwrap(),
-            want,
-        );
+    for (count, coverage, want) in [(25, 0.95, "0.7226"), (59, 0.95, "0.9515"), (299, 0.99, "0.9505")] {
+        printed("confidence", confidence_of_greatest(count, coverage).unwrap(), want);
     }
     assert!((confidence_of_greatest(1, 0.95).unwrap() - 0.05).abs() < 1e-15);
 }
@@ -139,9 +102,7 @@ fn the_greatest_of_n() {
 #[test]
 fn monotony_over_the_permitted_range() {
     let shares = [0.5, 0.6, 0.75, 0.9, 0.95, 0.99, 0.999, 0.999_999];
-    let counts = [
-        2, 3, 4, 5, 6, 8, 10, 13, 20, 35, 60, 120, 500, 3_000, 10_000, 100_000, 1_000_000,
-    ];
+    let counts = [2, 3, 4, 5, 6, 8, 10, 13, 20, 35, 60, 120, 500, 3_000, 10_000, 100_000, 1_000_000];
     let k = |n, p, c| tolerance_factor_one_sided(n, p, c).unwrap();
     for p in shares {
         for c in &shares[1..] {
@@ -153,14 +114,8 @@ fn monotony_over_the_permitted_range() {
     for n in counts {
         for fixed in shares {
             for pair in shares.windows(2) {
-                assert!(
-                    k(n, pair[1], fixed) > k(n, pair[0], fixed),
-                    "{n} p {pair:?} c {fixed}"
-                );
-                assert!(
-                    k(n, fixed, pair[1]) > k(n, fixed, pair[0]),
-                    "{n} p {fixed} c {pair:?}"
-                );
+                assert!(k(n, pair[1], fixed) > k(n, pair[0], fixed), "{n} p {pair:?} c {fixed}");
+                assert!(k(n, fixed, pair[1]) > k(n, fixed, pair[0]), "{n} p {fixed} c {pair:?}");
             }
         }
     }

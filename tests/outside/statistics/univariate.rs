@@ -30,14 +30,7 @@ fn num_acc_1() {
 
 #[test]
 fn num_acc_2() {
-    check(
-        "NumAcc2",
-        &alternating(1.2, 1.1, 1.3),
-        1.2,
-        0.1,
-        4e-16,
-        1e-14,
-    );
+    check("NumAcc2", &alternating(1.2, 1.1, 1.3), 1.2, 0.1, 4e-16, 1e-14);
 }
 
 /// The decimals 1000000.1, .2, .3 are not exact in binary: s of the stored numbers departs from 0.1 by 5e-10 of itself. No double
@@ -61,21 +54,11 @@ fn num_acc_4() {
 #[test]
 fn mavro() {
     let last_digits = [
-        18, 17, 18, 19, 18, 17, 15, 14, 15, 15, 17, 18, 18, 19, 19, 21, 20, 16, 14, 13, 13, 15, 15,
-        16, 15, 14, 13, 14, 15, 14, 15, 16, 15, 16, 19, 20, 20, 21, 22, 23, 24, 25, 27, 26, 26, 26,
-        27, 26, 25, 24,
+        18, 17, 18, 19, 18, 17, 15, 14, 15, 15, 17, 18, 18, 19, 19, 21, 20, 16, 14, 13, 13, 15, 15, 16, 15, 14, 13, 14,
+        15, 14, 15, 16, 15, 16, 19, 20, 20, 21, 22, 23, 24, 25, 27, 26, 26, 26, 27, 26, 25, 24,
     ];
-    let values: Vec<f64> = last_digits
-        .map(|d| f64::from(20_000 + d) / 10_000.0)
-        .to_vec();
-    check(
-        "Mavro",
-        &values,
-        2.001_856,
-        0.000_429_123_454_003_053,
-        4e-16,
-        1e-12,
-    );
+    let values: Vec<f64> = last_digits.map(|d| f64::from(20_000 + d) / 10_000.0).to_vec();
+    check("Mavro", &values, 2.001_856, 0.000_429_123_454_003_053, 4e-16, 1e-12);
 }
 
 /// Beam deflections (Lew). Typed from memory of the NIST file; the certified mean and standard deviation, and the certified lag-1
@@ -108,12 +91,7 @@ fn si_rstv_within_groups() {
         let s = Summary::of(&group).unwrap().standard_deviation().unwrap();
         squares += 4.0 * s * s;
     }
-    close(
-        "SiRstv",
-        (squares / 20.0).sqrt(),
-        0.104_076_068_334_656,
-        1e-12,
-    );
+    close("SiRstv", (squares / 20.0).sqrt(), 0.104_076_068_334_656, 1e-12);
 }
 
 /// One wild value: computed with exact fractions by hand. 100 x 5 and once 1105: mean 15.891..., s = 1100 / sqrt 101.
@@ -122,14 +100,7 @@ fn one_wild_value() {
     let mut values = vec![5.0; 100];
     values.push(1105.0);
     let s = 1100.0 / 101f64.sqrt();
-    check(
-        "one wild value",
-        &values,
-        5.0 + 1100.0 / 101.0,
-        s,
-        1e-15,
-        1e-15,
-    );
+    check("one wild value", &values, 5.0 + 1100.0 / 101.0, s, 1e-15, 1e-15);
     assert_eq!(Summary::of(&values).unwrap().greatest(), 1105.0);
     assert_eq!(Summary::of(&values).unwrap().least(), 5.0);
 }
@@ -160,28 +131,14 @@ fn symmetry() {
     assert_eq!(negated.greatest(), -plain.least());
     let scaled = Summary::of(&values.map(|x| 4.0 * x)).unwrap();
     assert_eq!(scaled.mean(), 4.0 * plain.mean());
-    assert_eq!(
-        scaled.standard_deviation().unwrap(),
-        4.0 * plain.standard_deviation().unwrap()
-    );
+    assert_eq!(scaled.standard_deviation().unwrap(), 4.0 * plain.standard_deviation().unwrap());
     let moved = Summary::of(&values.map(|x| x + 1_048_576.0)).unwrap();
-    close(
-        "moved s",
-        moved.standard_deviation().unwrap(),
-        plain.standard_deviation().unwrap(),
-        1e-15,
-    );
+    close("moved s", moved.standard_deviation().unwrap(), plain.standard_deviation().unwrap(), 1e-15);
 }
 
 #[test]
 fn tiny_samples() {
-    assert_eq!(
-        Summary::of(&[]),
-        Err(StatisticsError::TooFewValues {
-            needed: 1,
-            given: 0
-        })
-    );
+    assert_eq!(Summary::of(&[]), Err(StatisticsError::TooFewValues { needed: 1, given: 0 }));
     let one = Summary::of(&[7.0]).unwrap();
     assert_eq!((one.mean(), one.least(), one.greatest()), (7.0, 7.0, 7.0));
     assert_eq!(one.standard_deviation(), None);
