@@ -85,6 +85,8 @@ pub struct Press {
     pub rod: Option<Length>,
     /// The fastest speed in use.
     pub fastest_speed: Option<Rate>,
+    /// The slowest speed in use, which a two-hand trip takes longest to close the die at.
+    pub slowest_speed: Option<Rate>,
     /// The heaviest upper die in use.
     pub heaviest_die: Option<Mass>,
     /// CE mark.

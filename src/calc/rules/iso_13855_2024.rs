@@ -4,6 +4,7 @@ use super::iso_13855_2010::{FLOOR, K_FAR, K_NEAR, SWITCH};
 use super::*;
 use crate::basis::Basis;
 use crate::safeguard::{HorizontalField, LightCurtain, WayOver};
+use crate::stop_test::BrakeState;
 
 const DOCUMENT: &str = "ISO 13855:2024";
 const fn part(words: &'static str, basis: Basis) -> Source {
@@ -71,6 +72,19 @@ impl RuleSet for Iso138552024 {
 
     fn least_stops(&self) -> (usize, Source) {
         (10, TESTS)
+    }
+
+    fn judge_tests(&self, tests: &[&StopTest]) -> Vec<TestFinding> {
+        BrakeState::ALL
+            .iter()
+            .filter(|state| !tests.iter().any(|test| test.condition.brake == **state))
+            .map(|state| {
+                TestFinding::Missing(format!(
+                    "a stop test with the brake {}; this edition wants cold and warm",
+                    state.words()
+                ))
+            })
+            .collect()
     }
 
     fn looks_at_way_over(&self) -> bool {

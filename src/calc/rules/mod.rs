@@ -180,7 +180,7 @@ pub trait RuleSet: Sync {
     }
 
     /// The greatest stop-time increase that the brake monitor may allow, where it limits that.
-    fn monitor_limit(&self, _tests: &[&StopTest]) -> Option<(Time, Source)> {
+    fn monitor_limit(&self, _tests: &[&StopTest]) -> Option<MonitorLimit> {
         None
     }
 
@@ -213,6 +213,17 @@ impl NeededAngle {
         let apart = (angle.base() - self.angle.base()).rem_euclid(turn);
         apart.min(turn - apart) <= self.within.base()
     }
+}
+
+/// What a rule set lets the brake monitor allow at the top of the stroke.
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
+pub struct MonitorLimit {
+    /// The longest stop measured at the top.
+    pub longest_top: Time,
+    /// The greatest increase over it.
+    pub most_increase: Time,
+    /// Where it says so.
+    pub source: Source,
 }
 
 /// What a rule set finds in the stop tests as a whole.

@@ -100,10 +100,13 @@ impl RuleSet for Us1910217H {
             .collect()
     }
 
-    fn monitor_limit(&self, tests: &[&StopTest]) -> Option<(Time, Source)> {
-        let longest =
-            tests.iter().filter(|test| NEEDED[0].is_met_by(test.condition.angle)).flat_map(|test| &test.stops).max()?;
-        Some((monitor_limit(*longest), MONITOR))
+    fn monitor_limit(&self, tests: &[&StopTest]) -> Option<MonitorLimit> {
+        let longest_top = *tests
+            .iter()
+            .filter(|test| NEEDED[0].is_met_by(test.condition.angle))
+            .flat_map(|test| &test.stops)
+            .max()?;
+        Some(MonitorLimit { longest_top, most_increase: monitor_limit(longest_top), source: MONITOR })
     }
 }
 
