@@ -1,1 +1,5 @@
-//! What is used: the window and the command line.
+//! What is used: the window and the command line of the program `slidehalt`.
+
+pub mod document;
+pub mod results;
+pub mod window;
