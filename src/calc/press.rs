@@ -1,6 +1,7 @@
 //! One press: what it is, what it carries, what happened to it.
 
 use crate::calendar::Moment;
+use crate::reading::{Reading, ReadingSetup};
 use crate::refusal::Refusal;
 use crate::safeguard::Safeguard;
 use crate::stop_test::StopTest;
@@ -100,6 +101,10 @@ pub struct Press {
     pub safeguards: Vec<Safeguard>,
     /// Its stop tests, in the order of entry.
     pub stop_tests: Vec<StopTest>,
+    /// How its monthly readings are taken, where that is set.
+    pub reference: Option<ReadingSetup>,
+    /// Its monthly readings, in the order of entry.
+    pub readings: Vec<Reading>,
     /// What happened to it, in the order of entry.
     pub events: Vec<Event>,
 }

@@ -182,14 +182,16 @@ impl History {
     /// Takes the last change back.
     pub fn undo(&mut self) {
         if let Some((label, before)) = self.undo.pop() {
-            self.redo.push((label, self.travel_to(before)));
+            let after = self.travel_to(before);
+            self.redo.push((label, after));
         }
     }
 
     /// Brings the last undone change back.
     pub fn redo(&mut self) {
         if let Some((label, after)) = self.redo.pop() {
-            self.undo.push((label, self.travel_to(after)));
+            let before = self.travel_to(after);
+            self.undo.push((label, before));
         }
     }
 

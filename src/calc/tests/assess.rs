@@ -91,12 +91,21 @@ fn press() -> Press {
         monitor: None,
         safeguards: Vec::new(),
         stop_tests: vec![stop_test(90, &TEN)],
+        reference: None,
+        readings: Vec::new(),
         events: Vec::new(),
     }
 }
 
 fn plant() -> PlantSettings {
-    PlantSettings { name: "plant".into(), rules: RuleSetId::Iso138552010, wish: None, test_interval_months: 12 }
+    PlantSettings {
+        name: "plant".into(),
+        rules: RuleSetId::Iso138552010,
+        wish: None,
+        test_interval_months: 12,
+        reading_interval: None,
+        warning_share_percent: 50,
+    }
 }
 
 fn answer(press: &Press, safeguard: &Safeguard) -> Answer {
