@@ -290,7 +290,7 @@ fn mean_speed(dates: &[DatedStops<'_>]) -> f64 {
 fn count_different(days: &[f64]) -> usize {
     let mut ordered = days.to_vec();
     ordered.sort_by(f64::total_cmp);
-    ordered.chunk_by(|a, b| !(a < b)).count()
+    ordered.chunk_by(|a, b| a >= b).count()
 }
 
 #[cfg(test)]
