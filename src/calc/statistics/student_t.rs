@@ -99,7 +99,8 @@ impl NoncentralT {
             let next = if low <= newton && newton <= high { newton } else { 0.5 * (low + high) };
             let moved = (next - t).abs();
             t = next;
-            if moved <= 4.0 * f64::EPSILON * t {
+            // The thousandth lets a quantile of zero end as well.
+            if moved <= 4.0 * f64::EPSILON * (t + 1.0e-3) {
                 break;
             }
         }
