@@ -2,9 +2,8 @@
 
 use crate::draws::Draws;
 use calc::statistics::{
-    CusumSettings, DatedStops, EwmaSettings, Forecast, Growth, Line, NoForecast, Summary,
-    compare_two_dates, cusum, ewma, follow_dates, forecast_limit, mann_kendall, theil_sen,
-    upper_tolerance_bound,
+    CusumSettings, DatedStops, EwmaSettings, Forecast, Growth, Line, NoForecast, Summary, compare_two_dates, cusum,
+    ewma, follow_dates, forecast_limit, mann_kendall, theil_sen, upper_tolerance_bound,
 };
 
 const PRESSES: usize = 2_000;
@@ -30,13 +29,7 @@ fn press(draws: &mut Draws, slope_min: f64, slope_max: f64) -> Press {
     let scatter = draws.between(0.3, 3.0);
     let mut day = draws.between(0.0, 20_000.0);
     let start = day;
-    let mut press = Press {
-        days: Vec::new(),
-        values: Vec::new(),
-        level: level - slope * start,
-        slope,
-        scatter,
-    };
+    let mut press = Press { days: Vec::new(), values: Vec::new(), level: level - slope * start, slope, scatter };
     for _ in 0..draws.whole(4, 24) {
         day += draws.between(20.0, 40.0);
         let value = reading(draws, &press, day);
@@ -62,11 +55,7 @@ fn prediction_bound_and_slope_interval() {
         let future = reading(&mut draws, &press, day);
         let line = Line::fit(&press.days, &press.values).unwrap();
         below += usize::from(future <= line.upper_prediction_bound_at(day, 0.95).unwrap());
-        within += usize::from(
-            line.prediction_interval_at(day, 0.95)
-                .unwrap()
-                .contains(future),
-        );
+        within += usize::from(line.prediction_interval_at(day, 0.95).unwrap().contains(future));
         slope_held += usize::from(line.slope_interval(0.95).unwrap().contains(press.slope));
     }
     check_share("upper bound", below, 0.93, 0.97);
@@ -125,10 +114,7 @@ fn theil_sen_and_mann_kendall() {
     for _ in 0..PRESSES {
         let trending = press(&mut draws, -0.02, 0.05);
         let line = theil_sen(&trending.days, &trending.values, 0.95).unwrap();
-        held += usize::from(
-            line.slope_interval
-                .is_none_or(|i| i.contains(trending.slope)),
-        );
+        held += usize::from(line.slope_interval.is_none_or(|i| i.contains(trending.slope)));
         let level = press(&mut draws, 0.0, 0.0);
         let test = mann_kendall(&level.days, &level.values).unwrap();
         false_alarms += usize::from(test.probability().two_sided <= 0.05);
@@ -144,17 +130,11 @@ fn splits_raise_few_false_alarms() {
     let speeds = [20.0, 20.0, 20.0, 40.0, 40.0, 40.0];
     let (mut two, mut series) = (0, 0);
     for _ in 0..PRESSES {
-        let days: Vec<[f64; 6]> = (0..6)
-            .map(|_| speeds.map(|speed| 40.0 + 1.5 * speed + draws.normal()))
-            .collect();
+        let days: Vec<[f64; 6]> = (0..6).map(|_| speeds.map(|speed| 40.0 + 1.5 * speed + draws.normal())).collect();
         let dates: Vec<DatedStops<'_>> = days
             .iter()
             .enumerate()
-            .map(|(index, times)| DatedStops {
-                day: 30.0 * index as f64,
-                speeds: &speeds,
-                times,
-            })
+            .map(|(index, times)| DatedStops { day: 30.0 * index as f64, speeds: &speeds, times })
             .collect();
         let is_neither = |growth| usize::from(growth == Growth::Neither);
         two += is_neither(compare_two_dates(dates[0], dates[1]).unwrap().growth);
@@ -165,11 +145,7 @@ fn splits_raise_few_false_alarms() {
 }
 
 /// Mean number of readings up to the first signal, over 2,000 runs; `first_signal` looks at ever longer stretches of one run.
-fn run_length(
-    draws: &mut Draws,
-    shift: f64,
-    first_signal: impl Fn(&[f64]) -> Option<usize>,
-) -> f64 {
+fn run_length(draws: &mut Draws, shift: f64, first_signal: impl Fn(&[f64]) -> Option<usize>) -> f64 {
     let mut total = 0;
     for _ in 0..PRESSES {
         let mut readings = Vec::new();
@@ -190,25 +166,13 @@ fn run_length(
 #[test]
 fn cusum_run_lengths() {
     let mut draws = Draws::with_seed(6);
-    for (decision, shift, want) in [
-        (4.0, 0.0, 168.0),
-        (4.0, 1.0, 8.38),
-        (5.0, 0.0, 465.0),
-        (5.0, 1.0, 10.4),
-    ] {
+    for (decision, shift, want) in [(4.0, 0.0, 168.0), (4.0, 1.0, 8.38), (5.0, 0.0, 465.0), (5.0, 1.0, 10.4)] {
         let settings = CusumSettings::for_sigma(0.0, 1.0, decision);
         let got = run_length(&mut draws, shift, |readings| {
             let chart = cusum(readings, settings).unwrap();
-            [chart.rise, chart.fall]
-                .into_iter()
-                .flatten()
-                .map(|signal| signal.at)
-                .min()
+            [chart.rise, chart.fall].into_iter().flatten().map(|signal| signal.at).min()
         });
-        assert!(
-            (got / want - 1.0).abs() < 0.08,
-            "h {decision} shift {shift}: {got}, table {want}"
-        );
+        assert!((got / want - 1.0).abs() < 0.08, "h {decision} shift {shift}: {got}, table {want}");
     }
 }
 
@@ -217,24 +181,11 @@ fn cusum_run_lengths() {
 #[test]
 fn ewma_run_lengths() {
     let mut draws = Draws::with_seed(7);
-    for (lambda, width, shift, want) in [
-        (0.2, 2.962, 0.0, 500.0),
-        (0.2, 2.962, 1.0, 10.5),
-        (0.25, 2.998, 0.0, 500.0),
-        (0.25, 2.998, 1.0, 11.0),
-    ] {
-        let settings = EwmaSettings {
-            target: 0.0,
-            sigma: 1.0,
-            lambda,
-            width,
-        };
-        let got = run_length(&mut draws, shift, |readings| {
-            ewma(readings, settings).unwrap().first_signal_asymptotic
-        });
-        assert!(
-            (got / want - 1.0).abs() < 0.08,
-            "lambda {lambda} shift {shift}: {got}, table {want}"
-        );
+    for (lambda, width, shift, want) in
+        [(0.2, 2.962, 0.0, 500.0), (0.2, 2.962, 1.0, 10.5), (0.25, 2.998, 0.0, 500.0), (0.25, 2.998, 1.0, 11.0)]
+    {
+        let settings = EwmaSettings { target: 0.0, sigma: 1.0, lambda, width };
+        let got = run_length(&mut draws, shift, |readings| ewma(readings, settings).unwrap().first_signal_asymptotic);
+        assert!((got / want - 1.0).abs() < 0.08, "lambda {lambda} shift {shift}: {got}, table {want}");
     }
 }

@@ -20,18 +20,13 @@ fn against_statsmodels() {
                 near(&row.label, line_day.unwrap(), row.value, 1e-6);
             }
             ("forecast_none", got) => assert!(
-                matches!(
-                    got,
-                    Forecast::CannotTell(NoForecast::SlopeNotDistinguishable { .. })
-                ),
+                matches!(got, Forecast::CannotTell(NoForecast::SlopeNotDistinguishable { .. })),
                 "{}: {got:?}",
                 row.label
             ),
-            ("forecast_beyond", got) => assert!(
-                matches!(got, Forecast::CannotTell(NoForecast::BeyondHorizon { .. })),
-                "{}: {got:?}",
-                row.label
-            ),
+            ("forecast_beyond", got) => {
+                assert!(matches!(got, Forecast::CannotTell(NoForecast::BeyondHorizon { .. })), "{}: {got:?}", row.label)
+            }
             (_, got) => panic!("{}: {got:?}", row.label),
         }
     }
@@ -43,11 +38,7 @@ fn against_the_closed_form() {
     let points = set("monthly_12");
     let line = Line::fit(&points.x, &points.y).unwrap();
     for limit in [192.0, 200.0, 220.0] {
-        let Forecast::Ahead { bound_day, .. } =
-            forecast_limit(&points.x, &points.y, limit).unwrap()
-        else {
-            panic!()
-        };
+        let Forecast::Ahead { bound_day, .. } = forecast_limit(&points.x, &points.y, limit).unwrap() else { panic!() };
         let (n, mean) = (12.0, line.mean_x());
         let squares: f64 = points.x.iter().map(|x| (x - mean) * (x - mean)).sum();
         let s = line.residual_standard_deviation().unwrap();
@@ -69,10 +60,7 @@ fn against_the_closed_form() {
 fn rising(days: &[f64]) -> Vec<f64> {
     // A small fixed zigzag about 100 + 0.1 per day.
     let zigzag = [0.4, -0.3, 0.1, -0.4, 0.3, -0.1];
-    days.iter()
-        .enumerate()
-        .map(|(i, d)| 100.0 + 0.1 * d + zigzag[i % 6])
-        .collect()
+    days.iter().enumerate().map(|(i, d)| 100.0 + 0.1 * d + zigzag[i % 6]).collect()
 }
 
 #[test]
@@ -82,21 +70,12 @@ fn already_reached() {
     let latest = values[7];
     let forecast = |limit| forecast_limit(&days, &values, limit).unwrap();
     // At the limit counts as reached, and so does a single earlier reading above it.
-    assert_eq!(
-        forecast(latest),
-        Forecast::AlreadyReached(Reached::Reading {
-            day: 210.0,
-            value: latest
-        })
-    );
+    assert_eq!(forecast(latest), Forecast::AlreadyReached(Reached::Reading { day: 210.0, value: latest }));
     let mut peaked = values.clone();
     peaked[3] = 130.0;
     assert_eq!(
         forecast_limit(&days, &peaked, 125.0).unwrap(),
-        Forecast::AlreadyReached(Reached::Reading {
-            day: 90.0,
-            value: 130.0
-        })
+        Forecast::AlreadyReached(Reached::Reading { day: 90.0, value: 130.0 })
     );
     // One reading is enough to say that the limit is reached, though too few for anything else.
     assert!(matches!(
@@ -135,15 +114,10 @@ fn why_nothing_can_be_told() {
         forecast_limit(&days, &[100.0; 8], 500.0).unwrap(),
         Forecast::CannotTell(NoForecast::SlopeNotDistinguishable { .. })
     ));
-    assert_eq!(
-        forecast_limit(&[5.0; 8], &rising(&days), 500.0).unwrap(),
-        Forecast::CannotTell(NoForecast::OneDay)
-    );
+    assert_eq!(forecast_limit(&[5.0; 8], &rising(&days), 500.0).unwrap(), Forecast::CannotTell(NoForecast::OneDay));
     assert_eq!(
         forecast_limit(&days, &rising(&days), 1000.0).unwrap(),
-        Forecast::CannotTell(NoForecast::BeyondHorizon {
-            horizon_days: 3652.5
-        })
+        Forecast::CannotTell(NoForecast::BeyondHorizon { horizon_days: 3652.5 })
     );
     for wrong in [f64::NAN, f64::INFINITY] {
         let mut values = rising(&days);
@@ -162,21 +136,15 @@ fn order_and_shift() {
     let values = rising(&days);
     let mut before = 0.0;
     for limit in [124.0, 130.0, 150.0, 200.0, 300.0] {
-        let Forecast::Ahead {
-            bound_day,
-            line_day: Some(line_day),
-            ..
-        } = forecast_limit(&days, &values, limit).unwrap()
+        let Forecast::Ahead { bound_day, line_day: Some(line_day), .. } =
+            forecast_limit(&days, &values, limit).unwrap()
         else {
             panic!("{limit}")
         };
         assert!(before < bound_day && bound_day < line_day);
         before = bound_day;
         let moved: Vec<f64> = days.iter().map(|d| d + 20_000.0).collect();
-        let Forecast::Ahead {
-            bound_day: moved, ..
-        } = forecast_limit(&moved, &values, limit).unwrap()
-        else {
+        let Forecast::Ahead { bound_day: moved, .. } = forecast_limit(&moved, &values, limit).unwrap() else {
             panic!("{limit}")
         };
         near("moved", moved - 20_000.0, bound_day, 1e-8);

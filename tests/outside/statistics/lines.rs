@@ -13,27 +13,11 @@ fn norris_certified() {
     let check = |what: &str, got: f64, certified: f64| close(what, got, certified, 5e-13);
     check("B0", line.intercept(), -0.262_323_073_774_029);
     check("B1", line.slope(), 1.002_116_818_020_45);
-    check(
-        "sd of B0",
-        line.intercept_standard_deviation().unwrap(),
-        0.232_818_234_301_152,
-    );
-    check(
-        "sd of B1",
-        line.slope_standard_deviation().unwrap(),
-        0.000_429_796_848_199_937,
-    );
-    check(
-        "residual sd",
-        line.residual_standard_deviation().unwrap(),
-        0.884_796_396_144_373,
-    );
+    check("sd of B0", line.intercept_standard_deviation().unwrap(), 0.232_818_234_301_152);
+    check("sd of B1", line.slope_standard_deviation().unwrap(), 0.000_429_796_848_199_937);
+    check("residual sd", line.residual_standard_deviation().unwrap(), 0.884_796_396_144_373);
     check("R2", line.r_squared().unwrap(), 0.999_993_745_883_712);
-    check(
-        "residual squares",
-        line.residual_squares(),
-        26.617_398_529_422_4,
-    );
+    check("residual squares", line.residual_squares(), 26.617_398_529_422_4);
     assert_eq!(line.degrees_of_freedom(), 34);
 }
 
@@ -45,12 +29,7 @@ fn norris_moved_far_away() {
     let y: Vec<f64> = norris.y.iter().map(|y| y + 1e6).collect();
     let line = Line::fit(&x, &y).unwrap();
     close("B1", line.slope(), 1.002_116_818_020_45, 1e-12);
-    close(
-        "sd of B1",
-        line.slope_standard_deviation().unwrap(),
-        0.000_429_796_848_199_937,
-        1e-10,
-    );
+    close("sd of B1", line.slope_standard_deviation().unwrap(), 0.000_429_796_848_199_937, 1e-10);
 }
 
 /// statsmodels: ordinary and weighted lines, their uncertainties, intervals and prediction bounds for every stored set.

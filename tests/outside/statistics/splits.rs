@@ -2,9 +2,7 @@
 
 use crate::compare::{close, near, number, rows};
 use crate::stored_sets::stored;
-use calc::statistics::{
-    Change, DatedStops, Growth, compare_two_dates, follow_dates, split_delay_and_braking,
-};
+use calc::statistics::{Change, DatedStops, Growth, compare_two_dates, follow_dates, split_delay_and_braking};
 
 struct Day {
     day: f64,
@@ -14,11 +12,7 @@ struct Day {
 
 impl Day {
     fn stops(&self) -> DatedStops<'_> {
-        DatedStops {
-            day: self.day,
-            speeds: &self.speeds,
-            times: &self.times,
-        }
+        DatedStops { day: self.day, speeds: &self.speeds, times: &self.times }
     }
 }
 
@@ -27,11 +21,7 @@ fn days(case: &str) -> Vec<Day> {
     for row in rows(include_str!("stored/splits.csv")).filter(|row| row[0] == case) {
         let day = number(row[1]);
         if days.last().is_none_or(|last| last.day != day) {
-            days.push(Day {
-                day,
-                speeds: Vec::new(),
-                times: Vec::new(),
-            });
+            days.push(Day { day, speeds: Vec::new(), times: Vec::new() });
         }
         let last = days.last_mut().unwrap();
         last.speeds.push(number(row[2]));
@@ -52,10 +42,7 @@ fn against_statsmodels() {
         let (kind, quantity) = row.quantity.split_once('_').unwrap();
         let got = match kind {
             "split" => {
-                let day = days
-                    .iter()
-                    .find(|day| day.day == number(row.argument))
-                    .unwrap();
+                let day = days.iter().find(|day| day.day == number(row.argument)).unwrap();
                 let split = split_delay_and_braking(&day.speeds, &day.times).unwrap();
                 match quantity {
                     "delay" => split.delay,
@@ -103,11 +90,7 @@ fn what_was_drawn_is_found() {
     ] {
         let days = days(case);
         let dates: Vec<DatedStops<'_>> = days.iter().map(Day::stops).collect();
-        assert_eq!(
-            compare_two_dates(dates[0], dates[4]).unwrap().growth,
-            want,
-            "{case}"
-        );
+        assert_eq!(compare_two_dates(dates[0], dates[4]).unwrap().growth, want, "{case}");
         assert_eq!(follow_dates(&dates).unwrap().growth, want, "{case}");
     }
 }

@@ -10,11 +10,7 @@ pub struct Set {
 }
 
 pub fn set(name: &str) -> Set {
-    let mut set = Set {
-        x: Vec::new(),
-        y: Vec::new(),
-        weights: Vec::new(),
-    };
+    let mut set = Set { x: Vec::new(), y: Vec::new(), weights: Vec::new() };
     for row in rows(include_str!("stored/sets.csv")).filter(|row| row[0] == name) {
         set.x.push(number(row[1]));
         set.y.push(number(row[2]));

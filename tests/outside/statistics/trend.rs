@@ -30,18 +30,8 @@ fn four_readings() {
 #[test]
 fn five_readings() {
     let y = [1.26, 1.27, 1.12, 1.16, 1.03];
-    close(
-        "slope",
-        theil_sen(&in_order(5), &y, 0.95).unwrap().slope,
-        -0.05625,
-        1e-12,
-    );
-    close(
-        "tau",
-        mann_kendall(&in_order(5), &y).unwrap().tau,
-        -0.6,
-        1e-15,
-    );
+    close("slope", theil_sen(&in_order(5), &y, 0.95).unwrap().slope, -0.05625, 1e-12);
+    close("tau", mann_kendall(&in_order(5), &y).unwrap().tau, -0.6, 1e-15);
 }
 
 /// Exact probabilities of S as in Kendall's table (Gilbert 1987, table A18; values from memory): n 4, S 6: 0.042; n 5, S 8: 0.042,
@@ -52,11 +42,7 @@ fn table_of_exact_probabilities() {
         let y = order_with_sum(count, sum);
         let test = mann_kendall(&in_order(count), &y).unwrap();
         assert_eq!(test.sum, sum);
-        printed(
-            &format!("n {count} S {sum}"),
-            test.exact.unwrap().rising,
-            want,
-        );
+        printed(&format!("n {count} S {sum}"), test.exact.unwrap().rising, want);
     };
     check(4, 0, "0.625");
     check(4, 2, "0.375");
@@ -89,16 +75,11 @@ fn order_with_sum(count: usize, sum: i64) -> Vec<f64> {
 fn exact_against_counting_all_orders() {
     let mut sums = Vec::new();
     let mut order: Vec<f64> = in_order(6);
-    permute(&mut order, 6, &mut |y| {
-        sums.push(mann_kendall(&in_order(6), y).unwrap())
-    });
+    permute(&mut order, 6, &mut |y| sums.push(mann_kendall(&in_order(6), y).unwrap()));
     assert_eq!(sums.len(), 720);
     for test in &sums {
         let rising = sums.iter().filter(|other| other.sum >= test.sum).count();
-        let either = sums
-            .iter()
-            .filter(|other| other.sum.abs() >= test.sum.abs())
-            .count();
+        let either = sums.iter().filter(|other| other.sum.abs() >= test.sum.abs()).count();
         let exact = test.exact.unwrap();
         near("rising", exact.rising, rising as f64 / 720.0, 1e-15);
         near("two-sided", exact.two_sided, either as f64 / 720.0, 1e-15);
@@ -189,9 +170,6 @@ fn interval_end(label: &str, quantity: &str, by_scipy: f64, x: &[f64], y: &[f64]
     };
     assert!(outer <= inner + hair, "{label}: {outer} {inner}");
     let sign = if quantity == "ts_low" { 1.0 } else { -1.0 };
-    let between = slopes
-        .iter()
-        .filter(|&&slope| outer + hair < sign * slope && sign * slope < inner - hair)
-        .count();
+    let between = slopes.iter().filter(|&&slope| outer + hair < sign * slope && sign * slope < inner - hair).count();
     assert_eq!(between, 0, "{label}: {outer} {inner}");
 }
