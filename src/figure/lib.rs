@@ -12,6 +12,7 @@ mod labels;
 mod marks;
 mod palette;
 mod reach_strip;
+mod readings_chart;
 mod scale;
 
 pub use chart::{Chart, ChartLine, ChartPoint, Marker, chart};
@@ -21,4 +22,5 @@ pub use fonts::{Fonts, REGULAR, SEMI_BOLD};
 pub use marks::{AnswerMark, draw_mark};
 pub use palette::{Palette, Rgb, Role};
 pub use reach_strip::{StripInput, StripPart, reach_strip};
+pub use readings_chart::readings_chart;
 pub use scale::{Scale, ticks};
