@@ -5,10 +5,11 @@ use calc::rules::RuleSetId::EuPress;
 use calc::safeguard::Gap;
 
 use crate::case::{
-    beams, case, curtain, guard, level_field, mat, mm, on_full_revolution, on_press, starting_curtain, trip, two_hand,
+    beams, case, curtain, curtain_under, guard, level_field, mat, mm, on_full_revolution, on_press, starting_curtain,
+    trip, two_hand,
 };
 use crate::row::Expected::{Forbidden, Missing, NotCovered};
-use crate::row::{self, MEMORY, ON_PUBLIC, PUBLIC, Row};
+use crate::row::{self, MEMORY, ON_MEMORY, ON_PUBLIC, PUBLIC, Row};
 
 const ADDITIONS: &str = "DGUV Information 209-030, table of C";
 const SPEEDS: &str = "DGUV Information 209-030, Table 12";
@@ -85,6 +86,17 @@ pub fn rows() -> Vec<Row> {
             let name = format!("two-hand {shroud}, {}, T {t} s", words(conformity));
             row(name, on_press(case(two_hand(shrouded), t), conformity), row::mm(s), TWO_HAND, ON_PUBLIC);
         }
+    }
+    for (conformity, hazard, edge, s) in [
+        (CeMarked, "1000", "1000", "1470.000"),
+        (WithoutCe, "1000", "1000", "1470.000"),
+        // Nothing to add over a high edge, but the hand then moves at 2000 mm/s.
+        (WithoutCe, "1000", "1600", "400.000"),
+        (CeMarked, "1000", "1600", "400.000"),
+    ] {
+        let case = on_press(case(curtain_under(mm("14"), hazard, edge), "0.2"), conformity);
+        let name = format!("{}, T 0.2 s, hazard {hazard}, upper edge {edge} mm", words(conformity));
+        row(name, case, row::mm(s), "EN ISO 13855:2010, 6.5, applied to presses", ON_MEMORY);
     }
     let start = |d: &str| on_press(case(starting_curtain(mm(d)), "0.2"), WithoutCe);
     row("curtain of 30 mm may start the stroke".into(), start("30"), row::mm("450"), STARTING, PUBLIC);
