@@ -8,7 +8,7 @@ use crate::row::{self, Expected::NotCovered, ONE_TEXT, Row};
 const SOURCE: &str = "ISO 13857:2019, Table 4";
 
 /// Size just over the row before, size up to which the row holds, and the distances for slot, square and round hole.
-const TABLE: [(&str, &str, &str, &str, &str); 9] = [
+pub const TABLE: [(&str, &str, &str, &str, &str); 9] = [
     ("0.1", "4", "2", "2", "2"),
     ("4.001", "6", "10", "5", "5"),
     ("6.001", "8", "20", "15", "5"),

@@ -7,6 +7,7 @@ mod ansi_b11_19;
 mod case;
 mod dguv;
 mod east_asia;
+mod exact;
 mod iso_13855_2010;
 mod iso_13855_2024;
 mod iso_13857;

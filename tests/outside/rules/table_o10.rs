@@ -11,7 +11,7 @@ use crate::row::{Expected, Got, ON_PUBLIC, PUBLIC, Row, more_than_inch};
 const SOURCE: &str = "29 CFR 1910.217 Table O-10 as Michigan R 408.12461 Table 1";
 
 /// From, to, and widest opening, in inches.
-const TABLE: [(&str, &str, &str); 10] = [
+pub const TABLE: [(&str, &str, &str); 10] = [
     ("0.5", "1.5", "0.25"),
     ("1.5", "2.5", "0.375"),
     ("2.5", "3.5", "0.5"),
