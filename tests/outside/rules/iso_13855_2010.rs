@@ -2,13 +2,15 @@
 
 use calc::rules::RuleSetId::Iso138552010;
 use calc::safeguard::{Gap, LightCurtain, SafeguardKind, WayOver};
+use calc::steps::WorkedSteps;
+use calc::units::Speed;
 
 use crate::case::{
     beams, case, curtain, guard, level_field, mat, mm, on_full_revolution, round, slot, starting_curtain, tilted_field,
     trip, two_hand,
 };
 use crate::row::Expected::{self, Forbidden, Missing, NotCovered};
-use crate::row::{self, MEMORY, ON_MEMORY, ON_ONE_TEXT, ON_PUBLIC, PUBLIC, Row};
+use crate::row::{self, Got, MEMORY, ON_MEMORY, ON_ONE_TEXT, ON_PUBLIC, PUBLIC, Row};
 
 const FINE: &str = "ISO 13855:2010, 6.2.3.1";
 const COARSE: &str = "ISO 13855:2010, 6.2.3.2";
@@ -99,6 +101,13 @@ fn across() -> Vec<Row> {
         rows.push(row(format!("T {t} s, d {d} mm"), curtain(mm(d)), t, row::mm(s), COARSE, ON_PUBLIC));
     }
     rows.push(row("d just over 70 mm".into(), curtain(mm("70.001")), "0.2", NotCovered("70 mm"), COARSE, PUBLIC));
+    // At S1 = 500 mm exactly it is still the fast hand that decides; the change is for more than 500 mm.
+    for (t, fast) in [("0.249999", true), ("0.25", true), ("0.250001", false)] {
+        let demand = Iso138552010.rules().distance(&case(curtain(mm("14")), t), &mut WorkedSteps::new());
+        let speed = demand.ok().and_then(|demand| demand.make_up).map(|make_up| make_up.speed);
+        let got = Got::Says(speed == Some(Speed::mm_per_s(2000)));
+        rows.push(Row::new(format!("T {t} s, d 14: 2000 mm/s holds"), got, Expected::Says(fast), FINE, PUBLIC));
+    }
     let with_lowest = |lowest: Option<&str>| {
         SafeguardKind::LightCurtain(LightCurtain {
             detection: mm("50"),
