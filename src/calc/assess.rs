@@ -303,6 +303,12 @@ impl Question<'_> {
         {
             again(format!("The stop test was due on {due}."));
         }
+        if let (Some(interval), Some(latest)) =
+            (self.plant.reading_interval, self.press.readings.iter().map(|reading| reading.at.date).max())
+            && interval.after(latest) < self.today
+        {
+            again(format!("The reading was due on {}.", interval.after(latest)));
+        }
         let tested = |of: fn(&StopTest) -> i64| tests.iter().map(|index| of(&self.press.stop_tests[*index])).max();
         if let (Some(die), Some(most)) = (self.press.heaviest_die, tested(|test| test.condition.upper_die.base()))
             && die.base() > most

@@ -1,6 +1,8 @@
 //! One press: what it is, what it carries, what happened to it.
 
 use crate::calendar::Moment;
+use crate::reading::{Reading, ReadingSetup};
+use crate::refusal::Refusal;
 use crate::safeguard::Safeguard;
 use crate::stop_test::StopTest;
 use crate::units::{Length, Mass, Rate, Time};
@@ -99,8 +101,25 @@ pub struct Press {
     pub safeguards: Vec<Safeguard>,
     /// Its stop tests, in the order of entry.
     pub stop_tests: Vec<StopTest>,
+    /// How its monthly readings are taken, where that is set.
+    pub reference: Option<ReadingSetup>,
+    /// Its monthly readings, in the order of entry.
+    pub readings: Vec<Reading>,
     /// What happened to it, in the order of entry.
     pub events: Vec<Event>,
+}
+
+/// Checks that a tag can name a press and its file on every system.
+///
+/// # Errors
+/// A tag that is empty, longer than 40 characters, begins with a point, or holds anything but letters A to Z, digits, `-`, `_` and `.`.
+pub fn check_tag(tag: &str) -> Result<(), Refusal> {
+    let is_plain = |c: char| c.is_ascii_alphanumeric() || matches!(c, '-' | '_' | '.');
+    if !tag.is_empty() && tag.len() <= 40 && !tag.starts_with('.') && tag.chars().all(is_plain) {
+        return Ok(());
+    }
+    let allowed = "1 to 40 letters A to Z, digits, '-', '_' or '.', not beginning with a point";
+    Err(Refusal::new("Press tag", tag, allowed, "Choose a tag that can also be a file name."))
 }
 
 /// Something that happened to a press.

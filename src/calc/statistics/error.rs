@@ -38,6 +38,13 @@ pub enum StatisticsError {
         /// Greatest permitted.
         greatest: f64,
     },
+    /// A setting or weight that must be more than zero is not.
+    NotPositive {
+        /// What it stands for.
+        what: &'static str,
+        /// The number as given.
+        given: f64,
+    },
     /// Two lists that belong together differ in length.
     DifferentLengths {
         /// Length of the first list.
@@ -67,6 +74,9 @@ impl fmt::Display for StatisticsError {
             ),
             Self::OutOfRange { what, given, least, greatest } => {
                 write!(f, "The {what} is {given}. It must be from {least} to {greatest}. Choose another value.")
+            }
+            Self::NotPositive { what, given } => {
+                write!(f, "The {what} is {given}. It must be a finite number greater than 0. Correct the entry.")
             }
             Self::DifferentLengths { first, second } => write!(
                 f,
@@ -99,6 +109,34 @@ pub(crate) fn check_range(what: &'static str, given: f64, least: f64, greatest: 
     } else {
         Err(StatisticsError::OutOfRange { what, given, least, greatest })
     }
+}
+
+/// Refuses a setting that is not usable or not greater than zero.
+pub(crate) fn check_positive(what: &'static str, given: f64) -> Result<(), StatisticsError> {
+    if is_usable(given) && 0.0 < given { Ok(()) } else { Err(StatisticsError::NotPositive { what, given }) }
+}
+
+/// Refuses points whose coordinates are not equally many and all usable, or that are fewer than `needed`.
+pub(crate) fn check_points(
+    x_name: &'static str,
+    x: &[f64],
+    y_name: &'static str,
+    y: &[f64],
+    needed: usize,
+) -> Result<(), StatisticsError> {
+    if x.len() != y.len() {
+        return Err(StatisticsError::DifferentLengths { first: x.len(), second: y.len() });
+    }
+    if x.len() < needed {
+        return Err(StatisticsError::TooFewValues { needed, given: x.len() });
+    }
+    check_usable(x_name, x)?;
+    check_usable(y_name, y)
+}
+
+/// Refuses a single number that is not usable.
+pub(crate) fn check_one(what: &'static str, given: f64) -> Result<(), StatisticsError> {
+    check_range(what, given, -MAGNITUDE_MAX, MAGNITUDE_MAX)
 }
 
 /// Whether a single number is finite and of ordinary size.

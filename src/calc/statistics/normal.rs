@@ -7,11 +7,6 @@ pub(crate) fn normal_density(z: f64) -> f64 {
     libm::exp(-0.5 * z * z) / libm::sqrt(2.0 * PI)
 }
 
-/// Probability of a value below z, with full relative precision in the lower tail.
-pub(crate) fn normal_below(z: f64) -> f64 {
-    0.5 * libm::erfc(-z * FRAC_1_SQRT_2)
-}
-
 /// Probability of a value above z, with full relative precision in the upper tail.
 pub(crate) fn normal_above(z: f64) -> f64 {
     0.5 * libm::erfc(z * FRAC_1_SQRT_2)

@@ -2,7 +2,7 @@
 //!
 //! With Z standard normal and U = sqrt(chi-squared / nu), the noncentral t is (Z + delta) / U, so
 //!
-//!     P(T > t) = integral over u of  Phi(delta - t u)  times the density of U at u.
+//! P(T > t) = integral over u of  Phi(delta - t u)  times the density of U at u.
 //!
 //! The density of U is proportional to u^(nu-1) exp(-nu u^2 / 2). With u = e^x both factors are smooth and die away at both ends, and
 //! then the trapezoidal rule is good to rounding already at a moderate step (L. N. Trefethen, J. A. C. Weideman, "The exponentially
@@ -12,7 +12,9 @@
 //! Definition of the noncentral t: N. L. Johnson, S. Kotz, N. Balakrishnan, Continuous Univariate Distributions, vol. 2, 2nd ed.,
 //! Wiley 1995, chapter 31.
 
+use super::error::{StatisticsError, check_range};
 use super::normal::{normal_above, normal_density, normal_upper_quantile};
+use super::tolerance::{COUNT_MAX, SHARE_LEAST, SHARE_MAX};
 
 /// Widest step of x. Limits the error where the density of U is broad (few degrees of freedom).
 const STEP_MAX: f64 = 0.1;
@@ -97,7 +99,8 @@ impl NoncentralT {
             let next = if low <= newton && newton <= high { newton } else { 0.5 * (low + high) };
             let moved = (next - t).abs();
             t = next;
-            if moved <= 4.0 * f64::EPSILON * t {
+            // The thousandth lets a quantile of zero end as well.
+            if moved <= 4.0 * f64::EPSILON * (t + 1.0e-3) {
                 break;
             }
         }
@@ -109,6 +112,29 @@ impl NoncentralT {
         );
         t
     }
+}
+
+/// The t for which Student's t lies from -t to t with the stated confidence.
+///
+/// | input                | unit | permitted        |
+/// | -------------------- | ---- | ---------------- |
+/// | `confidence`         | 1    | 0.5 to 0.999999  |
+/// | `degrees_of_freedom` | 1    | 1 to 1,000,000   |
+///
+/// # Result    relative error below 2e-13, by comparison with 34-digit values from mpmath
+/// # Refuses   what lies outside the table
+/// # Source    definition; any table of Student's t
+/// # Example
+/// Nine degrees of freedom, 95 %: 2.262 in every printed table.
+/// ```
+/// let t = calc::statistics::student_t_two_sided(0.95, 9).unwrap();
+/// assert!((t - 2.262).abs() < 0.0005);
+/// ```
+pub fn student_t_two_sided(confidence: f64, degrees_of_freedom: usize) -> Result<f64, StatisticsError> {
+    check_range("confidence", confidence, SHARE_LEAST, SHARE_MAX)?;
+    let degrees = degrees_of_freedom as f64;
+    check_range("degrees of freedom", degrees, 1.0, COUNT_MAX as f64)?;
+    Ok(student_t_upper_quantile(0.5 * (1.0 - confidence), degrees))
 }
 
 /// The value of Student's t that is exceeded with probability `tail`, for 0 < tail <= 0.5 and at least one degree of freedom.

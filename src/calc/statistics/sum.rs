@@ -43,3 +43,15 @@ pub(crate) fn mean_of(values: &[f64]) -> f64 {
     let near = first + sum_of(values.iter().map(|x| x - first)) / count;
     near + sum_of(values.iter().map(|x| x - near)) / count
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// Neumaier's point: 1 + 1e100 + 1 - 1e100 is 2, where plain addition gives 0.
+    #[test]
+    fn nothing_is_rounded_away() {
+        assert_eq!(sum_of([1.0, 1e100, 1.0, -1e100].into_iter()), 2.0);
+        assert_eq!(sum_of([0.1; 10].into_iter()), 1.0);
+    }
+}

@@ -21,7 +21,7 @@ pub fn printed(what: &str, got: f64, printed: &str) {
 }
 
 /// Rows of a stored file: lines that begin with `#` and the line of heads are left out.
-pub fn rows(file: &str) -> impl Iterator<Item = Vec<&str>> {
+pub fn rows(file: &'static str) -> impl Iterator<Item = Vec<&'static str>> {
     file.lines().filter(|line| !line.starts_with('#') && !line.is_empty()).skip(1).map(|line| line.split(',').collect())
 }
 
@@ -29,4 +29,10 @@ pub fn rows(file: &str) -> impl Iterator<Item = Vec<&str>> {
 #[track_caller]
 pub fn number(cell: &str) -> f64 {
     cell.parse().unwrap_or_else(|_| panic!("no number: {cell}"))
+}
+
+/// Asserts |got - want| <= absolute.
+#[track_caller]
+pub fn near(what: &str, got: f64, want: f64, absolute: f64) {
+    assert!((got - want).abs() <= absolute, "{what}: got {got:e}, want {want:e}, difference {:e}", got - want);
 }

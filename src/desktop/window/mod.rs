@@ -1,0 +1,3 @@
+//! The window: document, drafts, view state and jobs; views read and wish, commands change.
+
+pub mod wishes;
