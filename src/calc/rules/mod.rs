@@ -19,7 +19,7 @@ use crate::basis::Source;
 use crate::expr;
 use crate::press::{Clutch, Conformity};
 use crate::round::{divide_down, divide_up};
-use crate::safeguard::SafeguardKind;
+use crate::safeguard::{HorizontalField, LightCurtain, SafeguardKind, WayOver};
 use crate::steps::{Expression, WorkedSteps};
 use crate::stop_test::StopTest;
 use crate::units::{Angle, Length, Rate, Speed, Time};
@@ -375,8 +375,43 @@ fn trip_figures(case: &Case) -> Result<(u32, Rate), NoDemand> {
                 "two-hand trip on a part-revolution clutch; enter it as two-hand control",
             ));
         }
-        None => return Err(NoDemand::missing("the number of engaging points of the clutch")),
+        None => 0,
     };
-    let speed = case.trip_speed.ok_or_else(|| NoDemand::missing("the speed of the press in strokes a minute"))?;
-    Ok((points, speed))
+    if points == 0 {
+        return Err(NoDemand::missing("the number of engaging points of the clutch"));
+    }
+    let speed = case.trip_speed.filter(|speed| *speed > Rate::ZERO);
+    Ok((points, speed.ok_or_else(|| NoDemand::missing("the speed of the press in strokes a minute"))?))
+}
+
+/// The start of the stroke by the curtain itself changes what a rule asks for; a rule set that says nothing of it must not
+/// answer as if the curtain only stopped.
+fn require_no_start(curtain: &LightCurtain) -> Result<(), NoDemand> {
+    if curtain.starts_stroke {
+        return Err(NoDemand::not_covered("a curtain that starts the stroke, whose conditions are not known here"));
+    }
+    Ok(())
+}
+
+/// A rule set that counts no reach over the curtain says so beside a way that is stated to be open.
+fn note_way_over(curtain: &LightCurtain, source: Source, steps: &mut WorkedSteps) {
+    if let WayOver::Open { .. } = curtain.over {
+        steps.note(
+            "",
+            "an arm can pass over the curtain",
+            "not in this distance: every other way to the point of operation must be guarded",
+            source,
+        );
+    }
+}
+
+/// The lowest beam decides how coarse a field may be, so it must not be given higher than the beam farthest from the hazard.
+fn require_lowest_beam_below(field: &HorizontalField) -> Result<(), NoDemand> {
+    if field.lowest > field.height {
+        return Err(NoDemand::not_covered(format!(
+            "a lowest beam at {} above the beam farthest from the hazard at {}",
+            field.lowest, field.height
+        )));
+    }
+    Ok(())
 }
