@@ -66,6 +66,10 @@ impl RuleSet for EuPress {
     fn least_stops(&self) -> (usize, Source) {
         (10, TESTS)
     }
+
+    fn looks_at_way_over(&self) -> bool {
+        true
+    }
 }
 
 fn curtain_distance(case: &Case, curtain: &LightCurtain, steps: &mut WorkedSteps) -> Result<Demand, NoDemand> {

@@ -156,6 +156,27 @@ pub trait RuleSet: Sync {
     /// [`NoDemand`] where it forbids the safeguard, does not cover the case, or lacks a figure.
     fn distance(&self, case: &Case, steps: &mut WorkedSteps) -> Result<Demand, NoDemand>;
 
+    /// The distance it asks for, with the supplemental distance that the user has entered: a rule set without a term for it
+    /// gets it added, for nothing that makes a distance longer is dropped in silence.
+    ///
+    /// # Errors
+    /// As [`RuleSet::distance`].
+    fn demand(&self, case: &Case, steps: &mut WorkedSteps) -> Result<Demand, NoDemand> {
+        let demand = self.distance(case, steps)?;
+        if self.needs_supplement() || case.supplement == Length::ZERO {
+            return Ok(demand);
+        }
+        let required = steps.put(
+            "S + Z",
+            "with the supplemental distance that was entered",
+            expr![demand.required, "+", case.supplement],
+            demand.required + case.supplement,
+            Source::GIVEN,
+        );
+        let make_up = demand.make_up.map(|make_up| MakeUp { addition: make_up.addition + case.supplement, ..make_up });
+        Ok(Demand { required, make_up, ..demand })
+    }
+
     /// The value of several stops that it takes forward, and where it says so.
     fn value_taken(&self) -> (ValueTaken, Source);
 
