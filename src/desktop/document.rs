@@ -18,6 +18,8 @@ pub struct Document {
     pub presses: Vec<Arc<Press>>,
     /// The press files that could not be read; they are listed and left untouched.
     pub unreadable: Vec<Unreadable>,
+    /// Tags that were changed since the last save: as saved, and as they are now.
+    pub renamed: Vec<(String, String)>,
 }
 
 /// A press file that could not be read.
@@ -58,6 +60,21 @@ impl Document {
         self.presses.iter().find(|press| press.tag == tag)
     }
 
+    /// The tag under which a press stands in the folder, where it bears another one now.
+    pub fn saved_tag<'a>(&'a self, saved: &'a Self, press: &Press) -> Option<&'a str> {
+        let is_free = |tag: &&str| saved.press(tag).is_some() && self.press(tag).is_none();
+        let renamed = self.renamed.iter().find(|(_, now)| *now == press.tag).map(|(was, _)| was.as_str());
+        // Undoing a change of tag after a save leaves no note of it; the press is then the same but for its tag.
+        let same_but_for_tag = || {
+            saved
+                .presses
+                .iter()
+                .find(|old| Press { tag: press.tag.clone(), ..Press::clone(old) } == *press)
+                .map(|old| old.tag.as_str())
+        };
+        renamed.filter(is_free).or_else(|| same_but_for_tag().filter(is_free))
+    }
+
     /// Carries out a change, whole or not at all.
     ///
     /// # Errors
@@ -72,6 +89,10 @@ impl Document {
                 edit(&mut press);
                 if press.tag != tag {
                     self.check_tag(&press.tag)?;
+                    match self.renamed.iter_mut().find(|(_, now)| *now == tag) {
+                        Some((_, now)) => now.clone_from(&press.tag),
+                        None => self.renamed.push((tag, press.tag.clone())),
+                    }
                 }
                 self.presses[index] = Arc::new(press);
             }
@@ -145,6 +166,7 @@ impl History {
     /// Takes note that the folder now holds the present state.
     pub fn mark_saved(&mut self, folder: PathBuf) {
         self.document.folder = Some(folder);
+        self.document.renamed.clear();
         self.saved = self.document.clone();
         self.revision += 1;
     }

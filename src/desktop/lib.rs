@@ -3,4 +3,5 @@
 pub mod document;
 pub mod host;
 pub mod results;
+pub mod saving;
 pub mod window;

@@ -14,6 +14,7 @@ use std::cell::RefCell;
 use std::rc::Rc;
 
 pub use error::HostError;
+pub use listener::dialog_failed;
 
 /// Which renderer the user asked for.
 #[derive(Clone, Copy, PartialEq, Eq, Debug, Default, clap::ValueEnum)]

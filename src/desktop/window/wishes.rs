@@ -6,6 +6,7 @@ use calc::plant_settings::PlantSettings;
 use calc::press::Press;
 use calc::units::LengthUnit;
 
+use super::sheets::Sheet;
 use crate::document::{Act, Change};
 
 /// One thing a view asks for.
@@ -30,8 +31,20 @@ pub enum Wish {
     ShowPress(String),
     /// Show this safeguard of the shown press, by its place.
     ShowSafeguard(usize),
+    /// Show this sheet.
+    ShowSheet(Sheet),
     /// Print the record of the shown press to a file.
     PrintRecord,
+    /// Print a list of what is due to a file.
+    PrintRoundList(Box<record::Record>, PathBuf),
+    /// Write a text to a file.
+    WriteFile(PathBuf, String),
+    /// List presses by tag, or gravest first.
+    SortByTag(bool),
+    /// Ask what holds for the plant.
+    EditPlant,
+    /// Say something at the foot of the window.
+    Tell(String),
     /// Show lengths in this unit.
     ShowIn(LengthUnit),
     /// Change between light and dark.
