@@ -1,3 +1,4 @@
 //! The window: document, drafts, view state and jobs; views read and wish, commands change.
 
+pub mod sheets;
 pub mod wishes;

@@ -1,0 +1,8 @@
+//! The sheets of the window, one for each thing that is known about a press.
+
+pub mod events;
+pub mod stop_tests;
+
+#[cfg(test)]
+#[path = "../../tests/fixture/mod.rs"]
+mod sample;
