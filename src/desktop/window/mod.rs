@@ -1,4 +1,5 @@
 //! The window: document, drafts, view state and jobs; views read and wish, commands change.
 
+pub mod context;
 pub mod sheets;
 pub mod wishes;
