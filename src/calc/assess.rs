@@ -36,10 +36,10 @@ pub fn assess(
         if let Some(chosen) = &chosen {
             question.write_value(chosen, &mut steps);
         }
-        Some(question.rules.distance(&case, &mut steps))
+        Some(question.rules.demand(&case, &mut steps))
     } else {
         // Without a stop the rule can still forbid the safeguard or not cover it; a distance would be that of an instant stop.
-        question.rules.distance(&case, &mut WorkedSteps::new()).err().map(Err)
+        question.rules.demand(&case, &mut WorkedSteps::new()).err().map(Err)
     };
     let demand = match outcome {
         Some(Ok(demand)) => Some(demand),

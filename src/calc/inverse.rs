@@ -59,7 +59,7 @@ pub fn is_met(rules: &dyn RuleSet, case: &Case, relied_on: Length) -> bool {
 }
 
 fn demand(rules: &dyn RuleSet, case: &Case) -> Option<Demand> {
-    rules.distance(case, &mut WorkedSteps::new()).ok()
+    rules.demand(case, &mut WorkedSteps::new()).ok()
 }
 
 /// The case with another stopping time.
@@ -94,13 +94,13 @@ fn write_steps(rules: &dyn RuleSet, at_limit: &Case, relied_on: Length, steps: &
         );
     }
     let others = make_up.time - at_limit.times.stopping;
-    steps.put(
-        "t allowed",
-        "longest stopping time: less the other parts",
-        expr![make_up.time, "−", others],
-        at_limit.times.stopping,
-        Source::ARITHMETIC,
-    );
+    // The opening time of a guard is taken off the response time, so that "less the others" can be a gain.
+    let (meaning, expression) = if others < Time::ZERO {
+        ("longest stopping time: plus the opening time, less the other parts", expr![make_up.time, "+", -others])
+    } else {
+        ("longest stopping time: less the other parts", expr![make_up.time, "−", others])
+    };
+    steps.put("t allowed", meaning, expression, at_limit.times.stopping, Source::ARITHMETIC);
     let later = with_stopping(at_limit, at_limit.times.stopping + Time::from_base(1));
     if let Some(beyond) = demand(rules, &later) {
         steps.put(

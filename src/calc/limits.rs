@@ -73,6 +73,8 @@ limits! {
     ENGAGING_POINTS: "Engaging points", "points", 1_000, 100_000, "A positive clutch engages at 1 to 100 places a revolution.";
     /// Setting of the brake monitor.
     MONITOR_SETTING: "Monitor setting", "ms", 1_000, 10_000_000, "The same range as a stopping time.";
+    /// Share of the spare from which a reading is a warning.
+    WARNING_SHARE: "Warning level", "% of the spare", 0, 100_000, "At 100 % the warning comes with the limit itself.";
     /// Months between tests.
     INTERVAL_MONTHS: "Test interval", "months", 1_000, 120_000, "Once in ten years at the least.";
 }

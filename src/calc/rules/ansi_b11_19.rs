@@ -28,6 +28,8 @@ const LOWEST_AT_MOST: Length = Length::from_base(12 * 25_400);
 const HIGHEST_AT_LEAST: Length = Length::from_base(48 * 25_400);
 /// For reaching over: highest beam at least 36 in.
 const HIGHEST_AT_LEAST_OVER: Length = Length::from_base(36 * 25_400);
+/// No figure of the standard is known here; over this height ISO 13855 knows no field along the approach.
+const HIGHEST_FIELD: Length = Length::mm(1000);
 /// A field at this angle or more to the approach counts as vertical.
 const VERTICAL_FROM: Angle = Angle::deg(30);
 
@@ -44,7 +46,10 @@ impl RuleSet for AnsiB1119 {
             require_part_revolution(case, STOPPING)?;
         }
         let dpf = match &case.kind {
-            SafeguardKind::LightCurtain(curtain) => Some(curtain_factor(curtain, steps)?),
+            SafeguardKind::LightCurtain(curtain) => {
+                require_no_start(curtain)?;
+                Some(curtain_factor(curtain, steps)?)
+            }
             SafeguardKind::SeparateBeams { heights } => {
                 let (Some(lowest), Some(highest)) = (heights.iter().min(), heights.iter().max()) else {
                     return Err(NoDemand::missing("the heights of the beams"));
@@ -91,6 +96,7 @@ impl RuleSet for AnsiB1119 {
 
 fn curtain_factor(curtain: &LightCurtain, steps: &mut WorkedSteps) -> Result<Length, NoDemand> {
     if curtain.detection <= FINE_UP_TO {
+        note_way_over(curtain, PENETRATION, steps);
         return fine_factor(curtain.detection, steps);
     }
     if curtain.detection > COARSE_UP_TO {
@@ -128,6 +134,12 @@ fn coarse_factor(lowest: Length, highest: Length, steps: &mut WorkedSteps) -> Re
 }
 
 fn horizontal_factor(field: &HorizontalField, steps: &mut WorkedSteps) -> Result<Length, NoDemand> {
+    require_lowest_beam_below(field)?;
+    if field.height > HIGHEST_FIELD {
+        return Err(NoDemand::not_covered(
+            "a field along the approach higher than 1000 mm, under which a person can pass",
+        ));
+    }
     // S at most H/15 + 2 in, kept whole by multiplying with 15.
     if field.detection.base() * 15 > field.lowest.base() + 15 * 50_800 {
         return Err(NoDemand::not_covered("a field coarser than H/15 + 2 in, which a foot or ankle can pass"));

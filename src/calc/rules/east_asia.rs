@@ -9,7 +9,8 @@ const DISTANCE: Source = Source::new(CODE, "distance of quick-stop two-hand and 
 const TRIP: Source = Source::new(CODE, "distance of two-hand start devices", Basis::FromMemory);
 const EXTRA: Source = Source::new(CODE, "extra distance by continuous shading width", Basis::FromMemory);
 const COARSEST: Source = Source::new(CODE, "safety devices, art. 20", Basis::PublicText);
-const LABEL: Source = Source::new(CODE, "safety devices, art. 26: allowed press stop time", Basis::PublicText);
+const LABEL: Source =
+    Source::new(CODE, "safety devices, art. 26: no stop may last longer than the label allows", Basis::FromMemory);
 
 /// Shading width up to and including which each extra distance holds.
 pub const EXTRA_STEPS: [(Length, Length); 4] = [
@@ -31,6 +32,8 @@ impl RuleSet for EastAsia {
         match &case.kind {
             SafeguardKind::LightCurtain(curtain) => {
                 require_part_revolution(case, DISTANCE)?;
+                require_no_start(curtain)?;
+                note_way_over(curtain, DISTANCE, steps);
                 let Some((_, extra)) = EXTRA_STEPS.iter().find(|(up_to, _)| curtain.detection <= *up_to) else {
                     return Err(NoDemand::forbidden("a smallest detectable rod over 50 mm", COARSEST));
                 };

@@ -1,7 +1,7 @@
 //! European press practice: EN 692 and ISO 16092-2, with the distances of the German accident insurers' guide to press
 //! inspection, DGUV Information 209-030. Part-revolution clutches only.
 
-use super::iso_13855_2010::{FLOOR, K_FAR, K_NEAR, SWITCH, single_speed, two_hand_addition, two_speeds};
+use super::iso_13855_2010::{FLOOR, K_FAR, K_NEAR, SWITCH, single_speed, two_hand_addition, two_speeds, with_way_over};
 use super::*;
 use crate::basis::Basis;
 use crate::safeguard::LightCurtain;
@@ -15,6 +15,7 @@ const ADDITIONS: Source = place("annex on distances, table of C", Basis::PublicT
 const SPEEDS: Source = place("Table 12", Basis::PublicText);
 const TWO_HAND: Source = place("Table 14", Basis::PublicText);
 const STARTING: Source = place("start of the stroke by light curtain", Basis::PublicText);
+const START_LIMITS: Source = place("EN 692, start of the stroke by light curtain", Basis::FromMemory);
 const SCOPE: Source = place("EN 692, scope: part-revolution clutches", Basis::PublicText);
 const TESTS: Source = place("stop-time measurement; EN ISO 13855 Annex D", Basis::FromMemory);
 
@@ -65,6 +66,10 @@ impl RuleSet for EuPress {
     fn least_stops(&self) -> (usize, Source) {
         (10, TESTS)
     }
+
+    fn looks_at_way_over(&self) -> bool {
+        true
+    }
 }
 
 fn curtain_distance(case: &Case, curtain: &LightCurtain, steps: &mut WorkedSteps) -> Result<Demand, NoDemand> {
@@ -83,11 +88,21 @@ fn curtain_distance(case: &Case, curtain: &LightCurtain, steps: &mut WorkedSteps
     };
     let time = response_time(case, "T", 1, SPEEDS, steps);
     let c = steps.put("C", "by detection capability", expr!["d =", d], *addition, ADDITIONS);
-    match conformity {
-        Conformity::CeMarked => Ok(two_speeds(time, c, SPEEDS, steps)),
+    if curtain.starts_stroke {
+        steps.note(
+            "",
+            "the curtain starts the stroke",
+            "bolster at least 750 mm high and at most 1000 mm deep, stroke at most 600 mm, start within a preset time: not checked here",
+            START_LIMITS,
+        );
+    }
+    let through = match conformity {
+        Conformity::CeMarked => two_speeds(time, c, SPEEDS, steps),
         Conformity::WithoutCe => {
             steps.note("v", "press without CE mark", format!("{K_FAR}, not {K_NEAR} up to {SWITCH}"), SPEEDS);
-            Ok(single_speed(time, c, FLOOR, SPEEDS, steps))
+            single_speed(time, c, FLOOR, SPEEDS, steps)
         }
-    }
+    };
+    // The guide speaks of reaching through alone; a stated way over is counted as EN ISO 13855 does.
+    with_way_over(curtain, time, through, steps)
 }

@@ -21,6 +21,7 @@ pub(super) const FLOOR: Length = Length::mm(100);
 
 const ORTHOGONAL: Source = clause("6.2.3.1", Basis::PublicText);
 const COARSE: Source = clause("6.2.3.2", Basis::PublicText);
+const LOW_BEAM: Source = clause("6.2.3.2", Basis::FromMemory);
 const BEAMS: Source = clause("6.2.4, Annex E", Basis::FromMemory);
 const PARALLEL: Source = clause("6.3", Basis::SingleText);
 const ANGLED: Source = clause("6.4", Basis::FromMemory);
@@ -33,6 +34,8 @@ const STOPPING: Source = clause("1, 4: the safeguard must be able to stop the mo
 
 const FINE_UP_TO: Length = Length::mm(40);
 const COARSE_UP_TO: Length = Length::mm(70);
+/// Over 40 mm the lowest beam lies at most this high.
+const LOWEST_BEAM: Length = Length::mm(300);
 const BODY: Length = Length::mm(850);
 const ONE_BEAM: Length = Length::mm(1200);
 const TWO_HAND_ADDITION: Length = Length::mm(250);
@@ -123,11 +126,15 @@ impl RuleSet for Iso138552010 {
 }
 
 fn curtain_distance(case: &Case, curtain: &LightCurtain, steps: &mut WorkedSteps) -> Result<Demand, NoDemand> {
+    require_no_start(curtain)?;
     let d = curtain.detection;
     if d > COARSE_UP_TO {
         return Err(NoDemand::not_covered(format!(
             "a detection capability of {d}; over 70 mm a field counts as separate beams"
         )));
+    }
+    if d > FINE_UP_TO {
+        require_low_beam(curtain.lower_edge)?;
     }
     let source = if d <= FINE_UP_TO { ORTHOGONAL } else { COARSE };
     let time = response_time(case, "T", 1, source, steps);
@@ -136,8 +143,32 @@ fn curtain_distance(case: &Case, curtain: &LightCurtain, steps: &mut WorkedSteps
         two_speeds(time, c, source, steps)
     } else {
         let c = steps.put("C", "arm through a field of 40 to 70 mm", expr!["d =", d], BODY, COARSE);
+        steps.note("", "lowest beam", format!("not over {LOWEST_BEAM}"), LOW_BEAM);
         single_speed(time, c, FLOOR, COARSE, steps)
     };
+    with_way_over(curtain, time, through, steps)
+}
+
+/// A field that a leg or arm can pass must begin low enough that nobody creeps under it.
+fn require_low_beam(lowest: Option<Length>) -> Result<(), NoDemand> {
+    match lowest {
+        None => Err(NoDemand::missing(
+            "the height of the lowest beam, at most 300 mm for a detection capability over 40 mm",
+        )),
+        Some(lowest) if lowest > LOWEST_BEAM => Err(NoDemand::not_covered(format!(
+            "a field coarser than 40 mm whose lowest beam is at {lowest}; 300 mm is the most"
+        ))),
+        Some(_) => Ok(()),
+    }
+}
+
+/// The larger of the distance through the field and, where the way is open, that over its upper edge.
+pub(super) fn with_way_over(
+    curtain: &LightCurtain,
+    time: Time,
+    through: Demand,
+    steps: &mut WorkedSteps,
+) -> Result<Demand, NoDemand> {
     let WayOver::Open { hazard, upper_edge } = curtain.over else { return Ok(through) };
     let c_over = reach_over(hazard, upper_edge, steps)?;
     let over = two_speeds(time, c_over, OVER, steps);
@@ -229,7 +260,11 @@ fn field_distance(case: &Case, field: &HorizontalField, steps: &mut WorkedSteps)
         curtain_distance(case, &curtain, steps)
     };
     if tilt > ACROSS_FROM + ANGLE_TOLERANCE {
+        steps.note("", format!("field at {}° to the approach", field.tilt.digits()), "counts as across it", ANGLED);
         return across(steps);
+    }
+    if tilt > 0 {
+        steps.note("", format!("field at {}° to the approach", field.tilt.digits()), "counts as along it", ANGLED);
     }
     let along = along_distance(case, field, steps)?;
     if tilt < ACROSS_FROM - ANGLE_TOLERANCE {
@@ -240,6 +275,7 @@ fn field_distance(case: &Case, field: &HorizontalField, steps: &mut WorkedSteps)
 }
 
 fn along_distance(case: &Case, field: &HorizontalField, steps: &mut WorkedSteps) -> Result<Demand, NoDemand> {
+    require_lowest_beam_below(field)?;
     if field.height > HIGHEST_FIELD {
         return Err(NoDemand::not_covered("a field along the approach higher than 1000 mm"));
     }
@@ -264,7 +300,12 @@ fn along_distance(case: &Case, field: &HorizontalField, steps: &mut WorkedSteps)
 }
 
 fn beams_addition(heights: &[Length]) -> Result<(Length, String), NoDemand> {
-    let known = BEAM_HEIGHTS.iter().any(|known| known.iter().map(|mm| Length::mm(*mm)).eq(heights.iter().copied()));
+    if heights.is_empty() {
+        return Err(NoDemand::missing("the heights of the beams"));
+    }
+    let mut upwards = heights.to_vec();
+    upwards.sort_unstable();
+    let known = BEAM_HEIGHTS.iter().any(|known| known.iter().map(|mm| Length::mm(*mm)).eq(upwards.iter().copied()));
     if !known {
         let given = heights.iter().map(|height| height.digits()).collect::<Vec<_>>().join(", ");
         return Err(NoDemand::not_covered(format!(

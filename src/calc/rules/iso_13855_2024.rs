@@ -97,6 +97,7 @@ impl RuleSet for Iso138552024 {
 }
 
 fn curtain_distance(case: &Case, curtain: &LightCurtain, steps: &mut WorkedSteps) -> Result<Demand, NoDemand> {
+    require_no_start(curtain)?;
     if curtain.detection > FINE_UP_TO {
         let what = "an effective detection capability over 40 mm, for which the edition of 2024 has a new formula that is not known here";
         return Err(NoDemand::not_covered(what));
@@ -128,6 +129,7 @@ fn field_distance(case: &Case, field: &HorizontalField, steps: &mut WorkedSteps)
     if field.tilt > Angle::ZERO {
         return Err(NoDemand::not_covered("fields tilted to the approach in the edition of 2024"));
     }
+    require_lowest_beam_below(field)?;
     if field.height > HIGHEST_FIELD {
         return Err(NoDemand::not_covered("a field along the approach higher than 1000 mm"));
     }

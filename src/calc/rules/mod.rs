@@ -19,7 +19,7 @@ use crate::basis::Source;
 use crate::expr;
 use crate::press::{Clutch, Conformity};
 use crate::round::{divide_down, divide_up};
-use crate::safeguard::SafeguardKind;
+use crate::safeguard::{HorizontalField, LightCurtain, SafeguardKind, WayOver};
 use crate::steps::{Expression, WorkedSteps};
 use crate::stop_test::StopTest;
 use crate::units::{Angle, Length, Rate, Speed, Time};
@@ -155,6 +155,27 @@ pub trait RuleSet: Sync {
     /// # Errors
     /// [`NoDemand`] where it forbids the safeguard, does not cover the case, or lacks a figure.
     fn distance(&self, case: &Case, steps: &mut WorkedSteps) -> Result<Demand, NoDemand>;
+
+    /// The distance it asks for, with the supplemental distance that the user has entered: a rule set without a term for it
+    /// gets it added, for nothing that makes a distance longer is dropped in silence.
+    ///
+    /// # Errors
+    /// As [`RuleSet::distance`].
+    fn demand(&self, case: &Case, steps: &mut WorkedSteps) -> Result<Demand, NoDemand> {
+        let demand = self.distance(case, steps)?;
+        if self.needs_supplement() || case.supplement == Length::ZERO {
+            return Ok(demand);
+        }
+        let required = steps.put(
+            "S + Z",
+            "with the supplemental distance that was entered",
+            expr![demand.required, "+", case.supplement],
+            demand.required + case.supplement,
+            Source::GIVEN,
+        );
+        let make_up = demand.make_up.map(|make_up| MakeUp { addition: make_up.addition + case.supplement, ..make_up });
+        Ok(Demand { required, make_up, ..demand })
+    }
 
     /// The value of several stops that it takes forward, and where it says so.
     fn value_taken(&self) -> (ValueTaken, Source);
@@ -375,8 +396,43 @@ fn trip_figures(case: &Case) -> Result<(u32, Rate), NoDemand> {
                 "two-hand trip on a part-revolution clutch; enter it as two-hand control",
             ));
         }
-        None => return Err(NoDemand::missing("the number of engaging points of the clutch")),
+        None => 0,
     };
-    let speed = case.trip_speed.ok_or_else(|| NoDemand::missing("the speed of the press in strokes a minute"))?;
-    Ok((points, speed))
+    if points == 0 {
+        return Err(NoDemand::missing("the number of engaging points of the clutch"));
+    }
+    let speed = case.trip_speed.filter(|speed| *speed > Rate::ZERO);
+    Ok((points, speed.ok_or_else(|| NoDemand::missing("the speed of the press in strokes a minute"))?))
+}
+
+/// The start of the stroke by the curtain itself changes what a rule asks for; a rule set that says nothing of it must not
+/// answer as if the curtain only stopped.
+fn require_no_start(curtain: &LightCurtain) -> Result<(), NoDemand> {
+    if curtain.starts_stroke {
+        return Err(NoDemand::not_covered("a curtain that starts the stroke, whose conditions are not known here"));
+    }
+    Ok(())
+}
+
+/// A rule set that counts no reach over the curtain says so beside a way that is stated to be open.
+fn note_way_over(curtain: &LightCurtain, source: Source, steps: &mut WorkedSteps) {
+    if let WayOver::Open { .. } = curtain.over {
+        steps.note(
+            "",
+            "an arm can pass over the curtain",
+            "not in this distance: every other way to the point of operation must be guarded",
+            source,
+        );
+    }
+}
+
+/// The lowest beam decides how coarse a field may be, so it must not be given higher than the beam farthest from the hazard.
+fn require_lowest_beam_below(field: &HorizontalField) -> Result<(), NoDemand> {
+    if field.lowest > field.height {
+        return Err(NoDemand::not_covered(format!(
+            "a lowest beam at {} above the beam farthest from the hazard at {}",
+            field.lowest, field.height
+        )));
+    }
+    Ok(())
 }

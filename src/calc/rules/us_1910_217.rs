@@ -14,6 +14,7 @@ pub(super) const HAND_SPEED: Speed = Speed::from_base(1_600_200);
 const PRESENCE: Source = Source::new(DOCUMENT, "(c)(3)(iii)(e)", Basis::PublicText);
 const NOT_ON_FULL_REVOLUTION: Source = Source::new(DOCUMENT, "(c)(3)(iii)(a)", Basis::PublicText);
 const NO_TRIPPING: Source = Source::new(DOCUMENT, "(c)(3)(iii)(b)", Basis::PublicText);
+const OTHER_WAYS: Source = Source::new(DOCUMENT, "(c)(3)(iii)(f)", Basis::FromMemory);
 const TWO_HAND_CONTROL: Source = Source::new(DOCUMENT, "(c)(3)(vii)(c)", Basis::PublicText);
 const LETTING_GO_STOPS: Source = Source::new(DOCUMENT, "(c)(3)(vii)(a)", Basis::FromMemory);
 const TWO_HAND_TRIP: Source = Source::new(DOCUMENT, "(c)(3)(viii)(c)", Basis::PublicText);
@@ -37,6 +38,7 @@ impl RuleSet for Us1910217 {
                     let why = "presence sensing must not start the stroke, except under all of paragraph (h)";
                     return Err(NoDemand::forbidden(why, NO_TRIPPING));
                 }
+                note_way_over(curtain, OTHER_WAYS, steps);
                 Ok(stop_distance(case, PRESENCE, steps))
             }
             SafeguardKind::SeparateBeams { .. } | SafeguardKind::HorizontalField(_) => {

@@ -7,6 +7,7 @@
 use super::us_1910_217::HAND_SPEED;
 use super::*;
 use crate::basis::Basis;
+use crate::stop_test::Condition;
 
 const DOCUMENT: &str = "29 CFR 1910.217";
 const FORMULA: Source = Source::new(DOCUMENT, "(h)(9)(v)", Basis::FromMemory);
@@ -14,6 +15,7 @@ const AVERAGES: Source = Source::new(DOCUMENT, "(h)(9)(v), (h)(2)(ii)", Basis::P
 const SENSITIVITY: Source = Source::new(DOCUMENT, "(h)(9)(iii)-(iv)", Basis::PublicText);
 const PENETRATION: Source = Source::new(DOCUMENT, "(h), Figure H-1", Basis::FromMemory);
 const PART_REVOLUTION: Source = Source::new(DOCUMENT, "(h), Appendix D; (c)(3)(iii)(a)", Basis::PublicText);
+const SUPPLEMENTAL: Source = Source::new(DOCUMENT, "(h)(10)(ii): supplemental safeguards", Basis::PublicText);
 const MONITOR: Source = Source::new(DOCUMENT, "(h)(5)(iii)", Basis::PublicText);
 
 /// Least object sensitivity at most 1 1/4 in.
@@ -50,6 +52,7 @@ impl RuleSet for Us1910217H {
         if curtain.detection > COARSEST {
             return Err(NoDemand::forbidden("object sensitivity coarser than 1 1/4 in (31.75 mm)", SENSITIVITY));
         }
+        note_way_over(curtain, SUPPLEMENTAL, steps);
         let time = response_time(case, "T", 2, FORMULA, steps);
         let beyond = (curtain.detection - PENETRATION_OFFSET).greatest(Length::ZERO);
         let dp = steps.put(
@@ -77,27 +80,28 @@ impl RuleSet for Us1910217H {
     }
 
     fn judge_tests(&self, tests: &[&StopTest]) -> Vec<TestFinding> {
-        let mean_about = |about: &NeededAngle| {
-            tests
-                .iter()
-                .filter(|test| about.is_met_by(test.condition.angle))
-                .filter_map(|test| ValueTaken::Mean.of(&test.stops))
-                .max()
+        let about = |needed: &NeededAngle| {
+            let is_about = |test: &&StopTest| needed.is_met_by(test.condition.angle) && !test.stops.is_empty();
+            tests.iter().copied().filter(is_about).collect::<Vec<_>>()
         };
-        let Some(top) = mean_about(&NEEDED[0]) else { return Vec::new() };
-        NEEDED[1..]
-            .iter()
-            .filter_map(|about| {
-                let mean = mean_about(about)?;
-                (i128::from(mean.base()) * 100 > i128::from(top.base()) * MOST_PER_CENT_OF_TOP).then(|| {
-                    TestFinding::Fails(format!(
-                        "the average stopping time at {}° is {mean}, more than 125 % of the {top} at the top ({})",
-                        about.angle.digits(),
-                        AVERAGES.place()
-                    ))
-                })
-            })
-            .collect()
+        let tops = about(&NEEDED[0]);
+        let mut findings = Vec::new();
+        for needed in &NEEDED[1..] {
+            let too_long = about(needed).into_iter().find_map(|test| {
+                let top = top_of(test, &tops)?;
+                is_over_share(&test.stops, &top.stops).then_some((test, top))
+            });
+            if let Some((test, top)) = too_long {
+                findings.push(TestFinding::Fails(format!(
+                    "the average stopping time at {}° is {}, more than 125 % of the {} at the top ({})",
+                    needed.angle.digits(),
+                    mean_words(&test.stops),
+                    mean_words(&top.stops),
+                    AVERAGES.place()
+                )));
+            }
+        }
+        findings
     }
 
     fn monitor_limit(&self, tests: &[&StopTest]) -> Option<MonitorLimit> {
@@ -108,6 +112,32 @@ impl RuleSet for Us1910217H {
             .max()?;
         Some(MonitorLimit { longest_top, most_increase: monitor_limit(longest_top), source: MONITOR })
     }
+}
+
+/// The stops at the top that a test is compared with: those of its own condition, or of any where there are none; among
+/// several the shortest average, which admits least.
+fn top_of<'a>(test: &StopTest, tops: &[&'a StopTest]) -> Option<&'a StopTest> {
+    let shortest = |of: &dyn Fn(&StopTest) -> bool| {
+        tops.iter().copied().filter(|top| of(top)).reduce(|one, other| {
+            let (of_one, of_other) = (crosswise(&one.stops, &other.stops), crosswise(&other.stops, &one.stops));
+            if of_other < of_one { other } else { one }
+        })
+    };
+    let condition_at = |top: &StopTest| Condition { angle: top.condition.angle, ..test.condition.clone() };
+    shortest(&|top| top.condition == condition_at(top)).or_else(|| shortest(&|_| true))
+}
+
+/// The sum of `stops` times the number of `others`: averages are compared crosswise, with nothing rounded.
+fn crosswise(stops: &[Time], others: &[Time]) -> i128 {
+    stops.iter().map(|stop| i128::from(stop.base())).sum::<i128>() * others.len() as i128
+}
+
+fn is_over_share(stops: &[Time], top: &[Time]) -> bool {
+    crosswise(stops, top) * 100 > crosswise(top, stops) * MOST_PER_CENT_OF_TOP
+}
+
+fn mean_words(stops: &[Time]) -> String {
+    ValueTaken::Mean.of(stops).map_or_else(String::new, |mean| mean.to_string())
 }
 
 /// The greatest increase that the brake monitor may allow: 10 % of the longest stopping time at the top of the stroke, rounded

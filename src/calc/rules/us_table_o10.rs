@@ -1,6 +1,6 @@
 //! Table O-10 of 29 CFR 1910.217: widest opening in a guard by its distance from the hazard.
 //!
-//! The figures were read as Table 1 of Michigan R 408.12461; that the federal table is the same is known from memory. The
+//! The figures were read as Table 1 of Michigan R 408.12461, one text; that the federal table is the same is known from memory. The
 //! ranges share their end points and the law does not say which row holds there: the smaller width is taken.
 
 use super::{Case, Demand, NoDemand};
@@ -10,7 +10,7 @@ use crate::safeguard::Opening;
 use crate::steps::WorkedSteps;
 use crate::units::Length;
 
-const TABLE: Source = Source::new("29 CFR 1910.217", "Table O-10 (as Michigan R 408.12461 Table 1)", Basis::PublicText);
+const TABLE: Source = Source::new("29 CFR 1910.217", "Table O-10 (as Michigan R 408.12461 Table 1)", Basis::SingleText);
 
 /// One row: from this distance on, an opening of at most this width.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]

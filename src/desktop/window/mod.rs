@@ -1,5 +1,8 @@
 //! The window: document, drafts, view state and jobs; views read and wish, commands change.
 
 pub mod context;
+pub mod drawing;
 pub mod sheets;
+pub mod theme;
+pub mod widgets;
 pub mod wishes;

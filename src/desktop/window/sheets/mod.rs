@@ -3,7 +3,6 @@
 pub mod entry;
 pub mod events;
 pub mod form;
-pub mod press;
 pub mod stop_tests;
 
 #[cfg(test)]
