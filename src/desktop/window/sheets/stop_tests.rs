@@ -13,19 +13,19 @@ use calc::press::Press;
 use calc::safeguard::Safeguard;
 use calc::units::Time;
 use calc::verdict::Assessment;
-use eframe::egui::{self, Id, RichText, vec2};
+use egui::{Id, vec2};
 
 use self::grid::{GridDrafts, LEAST_WIDTH, grid_ui};
 use self::ink::Ink;
 use self::model::{Row, Standing, next_test, rows};
 use self::partial::{Edit, PartialTest};
-use super::entry::Entries;
-use super::form::refusals_ui;
+use super::form::{Form, fill_strip, keep_strip};
 use crate::window::context::SheetContext;
+use crate::window::widgets::{Drafts, caption, heading};
 use crate::window::wishes::Wishes;
 
 /// What is being typed into the sheet of stop tests.
-#[derive(Default, Debug)]
+#[derive(Default)]
 pub struct StopTestsDrafts {
     /// Tag of the press that it is typed for.
     tag: String,
@@ -34,7 +34,7 @@ pub struct StopTestsDrafts {
     /// The grid.
     grid: GridDrafts,
     /// The fields of the chosen test.
-    fields: Entries,
+    fields: Drafts,
     /// The first test of a press, as far as it is filled in.
     first: PartialTest,
 }
@@ -60,6 +60,8 @@ impl StopTestsDrafts {
 /// Width of the drawings beside the grid.
 const SIDE: f32 = 420.0;
 const GAP: f32 = 32.0;
+const LABEL: f32 = 138.0;
+const FIELD: f32 = 216.0;
 
 /// Draws the sheet.
 pub fn stop_tests_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDrafts, wishes: &mut Wishes) {
@@ -88,22 +90,22 @@ fn tests_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDrafts, 
             ui.spacing_mut().item_spacing.x = 8.0;
             actions_ui(ui, cx, shown.map(|shown| shown.0), drafts, wishes);
             grid_ui(ui, cx.press, &rows, &mut drafts.grid, wishes);
-            let refusals = drafts.grid.refusals();
-            let all = refusals.iter().map(String::as_str).chain(drafts.fields.refusals());
-            refusals_ui(ui, 46.0, all);
-            ui.add_space(6.0);
+            let mut refused = drafts.grid.refused(cx.press);
+            ui.add_space(4.0);
+            let strip = keep_strip(ui);
             let fields_width = if is_wide { left } else { left - GAP - SIDE };
             ui.horizontal_top(|ui| {
                 ui.spacing_mut().item_spacing.x = GAP;
                 ui.vertical(|ui| {
                     ui.set_width(fields_width);
                     ui.spacing_mut().item_spacing.x = 8.0;
-                    chosen_fields_ui(ui, cx, drafts, wishes);
+                    chosen_fields_ui(ui, cx, drafts, &mut refused, wishes);
                 });
                 if !is_wide {
                     drawings_ui(ui, cx, &rows, drafts.grid.chosen, shown);
                 }
             });
+            fill_strip(ui, strip, &refused);
         });
         if is_wide {
             drawings_ui(ui, cx, &rows, drafts.grid.chosen, shown);
@@ -129,12 +131,12 @@ fn actions_ui(
         let new = ui.button("New test").on_hover_text("Takes over condition, clock start and instrument; no stops");
         if new.clicked() {
             let test = next_test(&press.stop_tests[chosen], cx.today);
-            drafts.grid.begin(press.stop_tests.len(), 0);
+            drafts.grid.begin(press, press.stop_tests.len(), 0);
             wishes.edit_press(press, "add stop test", move |press| press.stop_tests.push(test));
         }
         if ui.button("Duplicate").on_hover_text("Takes over everything, with the stops").clicked() {
             let test = press.stop_tests[chosen].clone();
-            drafts.grid.begin(press.stop_tests.len(), test.stops.len());
+            drafts.grid.begin(press, press.stop_tests.len(), test.stops.len());
             wishes.edit_press(press, "duplicate stop test", move |press| press.stop_tests.push(test));
         }
         if ui.button("Remove").on_hover_text("Undo brings it back").clicked() {
@@ -149,16 +151,23 @@ fn actions_ui(
             Some(safeguard) => format!("What governs is told for {}, {}.", safeguard.name, safeguard.stop_path.words()),
             None => "The press has no safeguard yet, so none of the tests governs.".into(),
         };
-        ui.label(RichText::new(words).weak());
+        caption(ui, words);
     });
     ui.add_space(4.0);
 }
 
-fn chosen_fields_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDrafts, wishes: &mut Wishes) {
+fn chosen_fields_ui(
+    ui: &mut egui::Ui,
+    cx: &SheetContext,
+    drafts: &mut StopTestsDrafts,
+    refused: &mut Vec<String>,
+    wishes: &mut Wishes,
+) {
     let chosen = drafts.grid.chosen;
     let test = PartialTest::of(&cx.press.stop_tests[chosen]);
-    let owner = Id::new((cx.press.tag.as_str(), "stop-test-fields", chosen));
-    if let Some(edit) = fields::test_fields_ui(ui, owner, &test, &mut drafts.fields) {
+    let owner = Id::unique((cx.press.tag.as_str(), "stop-test-fields", chosen));
+    let mut form = Form { owner, drafts: &mut drafts.fields, label: LABEL, field: FIELD, refused };
+    if let Some(edit) = fields::test_fields_ui(ui, &mut form, &test) {
         edit_test(cx.press, chosen, edit, wishes);
     }
 }
@@ -177,11 +186,14 @@ fn edit_test(press: &Press, chosen: usize, edit: Edit, wishes: &mut Wishes) {
 /// The form of the first test of a press: every field is empty until somebody fills it in.
 fn first_test_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDrafts, wishes: &mut Wishes) {
     ui.label("No stop was timed on this press yet. State how the first test is made; its stops are typed afterwards.");
-    let owner = Id::new((cx.press.tag.as_str(), "first-stop-test"));
-    refusals_ui(ui, 46.0, drafts.fields.refusals());
-    if let Some(edit) = fields::test_fields_ui(ui, owner, &drafts.first, &mut drafts.fields) {
+    let owner = Id::unique((cx.press.tag.as_str(), "first-stop-test"));
+    let strip = keep_strip(ui);
+    let mut refused = Vec::new();
+    let mut form = Form { owner, drafts: &mut drafts.fields, label: LABEL, field: FIELD, refused: &mut refused };
+    if let Some(edit) = fields::test_fields_ui(ui, &mut form, &drafts.first) {
         drafts.first.apply(edit);
     }
+    fill_strip(ui, strip, &refused);
     ui.add_space(10.0);
     let complete = drafts.first.complete();
     ui.horizontal(|ui| {
@@ -191,11 +203,11 @@ fn first_test_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDra
         {
             let test = test.clone();
             drafts.first = PartialTest::default();
-            drafts.grid.begin(0, 0);
+            drafts.grid.begin(cx.press, 0, 0);
             wishes.edit_press(cx.press, "add stop test", move |press| press.stop_tests.push(test));
         }
         if let Err(missing) = &complete {
-            ui.label(RichText::new(format!("Still to be stated: {}.", missing.join(", "))).weak());
+            caption(ui, format!("Still to be stated: {}.", missing.join(", ")));
         }
     });
 }
@@ -208,19 +220,19 @@ fn drawings_ui(
     chosen: usize,
     shown: Option<(&Safeguard, &Assessment)>,
 ) {
-    let ink = Ink::of(ui.visuals());
+    let ink = Ink::of(ui.ctx());
     let allowed = allowed_for(cx.press, shown, chosen);
     ui.vertical(|ui| {
         ui.set_width(SIDE);
         ui.spacing_mut().item_spacing = vec2(8.0, 4.0);
-        ui.label(RichText::new(format!("Stops at {}", rows[chosen].title)).strong());
+        heading(ui, &format!("Stops at {}", rows[chosen].title));
         let stops = &cx.press.stop_tests[chosen].stops;
         let marks = dots::marks(&rows[chosen].figures, allowed);
         dots::dots_ui(ui, vec2(SIDE, 190.0), stops, &marks, &ink);
         ui.add_space(10.0);
-        ui.label(RichText::new("Stop dial").strong());
+        heading(ui, "Stop dial");
         ui.vertical_centered(|ui| dial::dial_ui(ui, 330.0, &bars(cx.press, rows, chosen), allowed, &ink));
-        ui.add(egui::Label::new(RichText::new(dial_words(cx.press, shown, chosen)).small().weak()).wrap());
+        caption(ui, dial_words(cx.press, shown, chosen));
     });
 }
 

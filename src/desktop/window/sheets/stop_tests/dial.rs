@@ -5,7 +5,7 @@
 
 use calc::round::{Towards, time_text};
 use calc::units::{Angle, Time};
-use eframe::egui::{self, Align2, FontId, Pos2, Shape, Stroke, Vec2, vec2};
+use egui::{Align2, FontId, Pos2, Shape, Stroke, Vec2, vec2};
 
 use super::ink::Ink;
 
@@ -80,7 +80,15 @@ pub fn dial_ui(ui: &mut egui::Ui, size: f32, bars: &[Bar], allowed: Option<Time>
     for ring in 1..=rings {
         let time = Time::from_base(ring * step.base());
         let text = if ring == rings { time_text(time, Towards::Nearest) } else { time.digits() };
-        label(&painter, centre + direction(towards) * radius(time), Align2::CENTER_CENTER, &text, &scale, ink.faint, ink);
+        label(
+            &painter,
+            centre + direction(towards) * radius(time),
+            Align2::CENTER_CENTER,
+            &text,
+            &scale,
+            ink.faint,
+            ink,
+        );
     }
 }
 
@@ -110,12 +118,9 @@ fn draw_angles(painter: &egui::Painter, centre: Pos2, outer: f32, ink: &Ink) {
         painter.line_segment([centre + way * outer, centre + way * (outer + long)], Stroke::new(1.0, ink.faint));
     }
     let font = FontId::proportional(12.0);
-    for (angle, anchor) in [
-        (0, Align2::CENTER_BOTTOM),
-        (90, Align2::LEFT_CENTER),
-        (180, Align2::CENTER_TOP),
-        (270, Align2::RIGHT_CENTER),
-    ] {
+    for (angle, anchor) in
+        [(0, Align2::CENTER_BOTTOM), (90, Align2::LEFT_CENTER), (180, Align2::CENTER_TOP), (270, Align2::RIGHT_CENTER)]
+    {
         let at = centre + direction(Angle::deg(angle)) * (outer + 7.0);
         let (angle, anchor) = match angle {
             90 | 270 => (angle, if angle == 90 { Align2::RIGHT_BOTTOM } else { Align2::LEFT_BOTTOM }),
@@ -146,14 +151,7 @@ fn draw_running_direction(painter: &egui::Painter, centre: Pos2, ink: &Ink) {
     ));
 }
 
-fn draw_bar(
-    painter: &egui::Painter,
-    centre: Pos2,
-    bar: &Bar,
-    side: f32,
-    radius: &impl Fn(Time) -> f32,
-    ink: &Ink,
-) {
+fn draw_bar(painter: &egui::Painter, centre: Pos2, bar: &Bar, side: f32, radius: &impl Fn(Time) -> f32, ink: &Ink) {
     let way = direction(bar.angle);
     let aside = way.rot90() * side * (BAR + 2.0);
     let at = |time: Time| centre + aside + way * radius(time);
@@ -208,12 +206,21 @@ mod tests {
     use super::*;
 
     fn bar(angle: i64) -> Bar {
-        Bar { test: 0, angle: Angle::deg(angle), value: Time::ms(180), stops: Vec::new(), governs: false, chosen: false }
+        Bar {
+            test: 0,
+            angle: Angle::deg(angle),
+            value: Time::ms(180),
+            stops: Vec::new(),
+            governs: false,
+            chosen: false,
+        }
     }
 
     #[test]
     fn zero_is_on_top_and_the_crank_runs_clockwise() {
-        for (angle, expected) in [(0, vec2(0.0, -1.0)), (90, vec2(1.0, 0.0)), (180, vec2(0.0, 1.0)), (270, vec2(-1.0, 0.0))] {
+        for (angle, expected) in
+            [(0, vec2(0.0, -1.0)), (90, vec2(1.0, 0.0)), (180, vec2(0.0, 1.0)), (270, vec2(-1.0, 0.0))]
+        {
             assert!((direction(Angle::deg(angle)) - expected).length() < 1e-6, "{angle}");
         }
     }

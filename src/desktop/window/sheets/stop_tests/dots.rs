@@ -2,7 +2,7 @@
 
 use calc::round::{Towards, time_text};
 use calc::units::Time;
-use eframe::egui::{self, Align2, Color32, FontId, Pos2, Shape, Stroke, pos2, vec2};
+use egui::{Align2, Color32, FontId, Pos2, Shape, Stroke, pos2, vec2};
 
 use super::ink::Ink;
 use super::model::Figures;
@@ -154,7 +154,8 @@ fn draw_mark(painter: &egui::Painter, plot: egui::Rect, mark: &Mark, from: f32, 
     };
     let stroke = Stroke::new(width, colour);
     let right = plot.right();
-    let line: Vec<Pos2> = vec![pos2(plot.left(), from), pos2(right, from), pos2(right + 12.0, to), pos2(right + 18.0, to)];
+    let line: Vec<Pos2> =
+        vec![pos2(plot.left(), from), pos2(right, from), pos2(right + 12.0, to), pos2(right + 18.0, to)];
     match mark.kind {
         MarkKind::Allowed => painter.extend(Shape::dashed_line(&line, stroke, 6.0, 4.0)),
         MarkKind::Mean => painter.extend(Shape::dashed_line(&line, stroke, 2.0, 3.0)),

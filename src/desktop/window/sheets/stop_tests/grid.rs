@@ -1,47 +1,51 @@
 //! The grid: a row for each test, ten stops beside each other, figures at the end. The stops of the chosen row are fields.
 
-use std::collections::BTreeMap;
-
 use calc::limits::STOPPING_TIME;
 use calc::press::Press;
+use calc::refusal::Refusal;
 use calc::round::Towards;
 use calc::units::Time;
-use eframe::egui::{self, Align, Event, Id, Key, Layout, Rect, RichText, Sense, Stroke, UiBuilder, pos2, vec2};
+use egui::{Align, Event, Id, Key, Layout, Rect, RichText, Sense, Stroke, UiBuilder, pos2, vec2};
+use figure::Role;
 
 use super::model::{Figures, MOST_STOPS, Row, Standing, column_figure};
 use super::paste::{is_block, read_block};
-use crate::window::sheets::entry::{Entry, Look, entry_ui};
+use crate::window::sheets::form::refusal_words;
+use crate::window::theme;
+use crate::window::widgets::{Commit, Drafts, FieldKind, Moved, field_ui};
 use crate::window::wishes::Wishes;
 
 /// What is being typed into the grid.
-#[derive(Default, Debug)]
+#[derive(Default)]
 pub struct GridDrafts {
     /// The chosen test.
     pub chosen: usize,
-    /// Cells by test and place.
-    cells: BTreeMap<(usize, usize), Entry>,
-    /// Why the last pasted block was not taken.
-    pub block: Vec<String>,
-    /// The cell that shall get the keyboard next.
-    focus: Option<(usize, usize)>,
+    /// The cells.
+    cells: Drafts,
+    /// Why the last block was not taken.
+    block: Vec<String>,
 }
 
 impl GridDrafts {
     /// Chooses a test and puts the keyboard into its first empty cell.
-    pub fn begin(&mut self, test: usize, stops: usize) {
+    pub fn begin(&mut self, press: &Press, test: usize, stops: usize) {
         self.chosen = test;
-        self.focus = Some((test, stops));
+        self.cells.focus(cell_id(press, (test, stops)));
     }
 
     /// Forgets everything typed, as when tests have moved up.
     pub fn clear(&mut self) {
-        *self = Self { chosen: self.chosen, ..Self::default() };
+        self.cells.clear();
+        self.block.clear();
     }
 
-    /// Every refusal, each with the stop it is about.
-    pub fn refusals(&self) -> Vec<String> {
-        let cells = self.cells.iter().filter_map(|((_, cell), entry)| {
-            entry.refusal.as_ref().map(|refusal| format!("Stop {}. {refusal}", cell + 1))
+    /// Every refusal in the cells of the chosen test, each with the stop that it is about.
+    pub fn refused(&self, press: &Press) -> Vec<String> {
+        let Some(test) = press.stop_tests.get(self.chosen) else { return Vec::new() };
+        let cells = (0..=test.stops.len()).filter_map(|cell| {
+            let refusal = self.cells.refusal(cell_id(press, (self.chosen, cell)))?;
+            let taken = test.stops.get(cell).map_or_else(String::new, |stop| stop.digits());
+            Some(format!("Stop {}. {}", cell + 1, refusal_words(refusal, &taken, STOPPING_TIME.unit)))
         });
         cells.chain(self.block.iter().cloned()).collect()
     }
@@ -106,7 +110,8 @@ pub fn grid_ui(ui: &mut egui::Ui, press: &Press, rows: &[Row], drafts: &mut Grid
 
 fn head_ui(ui: &mut egui::Ui, widths: Widths) {
     let (rect, _) = ui.allocate_exact_size(vec2(widths.total(), HEAD), Sense::hover());
-    let bottom = |from: f32, width: f32| Rect::from_min_max(pos2(from, rect.top()), pos2(from + width, rect.bottom() - 5.0));
+    let bottom =
+        |from: f32, width: f32| Rect::from_min_max(pos2(from, rect.top()), pos2(from + width, rect.bottom() - 5.0));
     let mut put = |from: f32, width: f32, text: &str, align: Align| {
         let layout = Layout::bottom_up(align);
         ui.scope_builder(UiBuilder::new().max_rect(bottom(from, width)).layout(layout), |ui| {
@@ -147,7 +152,7 @@ fn row_ui(
     }
     ui.painter().hline(rect.x_range(), rect.bottom(), ui.visuals().widgets.noninteractive.bg_stroke);
     if title_ui(ui, rect, widths, press, index, row, is_chosen) {
-        drafts.begin(index, stops.len());
+        drafts.begin(press, index, stops.len());
     }
     let cell_rect = |cell: usize| {
         let corner = pos2(
@@ -170,14 +175,14 @@ fn row_ui(
             pos2(widths.figures_from(rect.left()), rect.bottom()),
         );
         if ui.interact(from, row_id(press, index).with("stops"), Sense::CLICK).clicked() {
-            drafts.begin(index, stops.len());
+            drafts.begin(press, index, stops.len());
         }
     }
     figures_ui(ui, rect, widths, row);
 }
 
 fn row_id(press: &Press, index: usize) -> Id {
-    Id::new((press.tag.as_str(), "stop-test", index))
+    Id::unique((press.tag.as_str(), "stop-test", index))
 }
 
 fn cell_id(press: &Press, (test, cell): (usize, usize)) -> Id {
@@ -224,15 +229,11 @@ fn title_ui(
         let title = RichText::new(&row.title).color(title_colour);
         ui.add(egui::Label::new(if governs { title.strong() } else { title }).truncate().selectable(false));
         ui.add(egui::Label::new(RichText::new(&row.detail).small().color(weak)).truncate().selectable(false));
-        let standing_colour = if governs { visuals_accent(ui) } else { weak };
+        let standing_colour = if governs { theme::colour(ui.ctx(), Role::Accent) } else { weak };
         let standing = RichText::new(&standing).small().color(standing_colour);
         ui.add(egui::Label::new(if governs { standing.strong() } else { standing }).truncate().selectable(false));
     });
     response.clicked()
-}
-
-fn visuals_accent(ui: &egui::Ui) -> egui::Color32 {
-    ui.visuals().hyperlink_color
 }
 
 /// What stands under the condition.
@@ -250,8 +251,7 @@ fn figures_ui(ui: &mut egui::Ui, row_rect: Rect, widths: Widths, row: &Row) {
     let up = |time: Option<Time>| time.map_or_else(String::new, |time| column_figure(time, Towards::Greater));
     let deviation = deviation.map_or_else(String::new, |time| column_figure(time, Towards::Greater));
     let taken = up(taken.map(|taken| taken.1));
-    let texts =
-        [count.to_string(), up(mean), deviation, up(longest), up(mean_plus_3_s), up(tolerance), taken];
+    let texts = [count.to_string(), up(mean), deviation, up(longest), up(mean_plus_3_s), up(tolerance), taken];
     let is_faint = matches!(row.standing, Standing::Superseded(_));
     let mut from = widths.figures_from(row_rect.left());
     for ((text, (_, width)), place) in texts.iter().zip(FIGURES).zip(0..) {
@@ -286,92 +286,59 @@ fn cell_ui(
 ) {
     let (test, cell) = place;
     let id = cell_id(press, place);
-    if drafts.focus == Some(place) {
-        drafts.focus = None;
-        ui.memory_mut(|memory| memory.request_focus(id));
-    }
     if let Some(text) = pasted_block(ui, id) {
         take_block(press, place, &text, drafts, wishes);
     }
-    let stop = press.stop_tests[test].stops.get(cell).copied();
-    let taken = stop.map_or_else(String::new, Time::digits);
-    let mut entry = drafts.cells.remove(&place).unwrap_or_default();
-    let (response, given) = ui
-        .scope_builder(UiBuilder::new().max_rect(rect).layout(Layout::left_to_right(Align::Center)), |ui| {
-            ui.spacing_mut().button_padding.x = 3.0;
-            entry_ui(ui, id, &mut entry, &taken, Look { width: rect.width(), align: Align::Max })
+    let label = format!("Stop {}", cell + 1);
+    let taken = press.stop_tests[test].stops.get(cell).map_or_else(String::new, |stop| stop.digits());
+    let kind = FieldKind::figure(&label, STOPPING_TIME.unit).wide(rect.width()).bare();
+    let layout = Layout::left_to_right(Align::Center);
+    let commit = ui
+        .scope_builder(UiBuilder::new().max_rect(rect).layout(layout), |ui| {
+            field_ui(ui, id, FieldKind { unit: "", ..kind }, &taken, &mut drafts.cells, read_cell)
         })
         .inner;
-    ui.ctx().accesskit_node_builder(id, |node| node.set_label(format!("Stop {}", cell + 1)));
-    let is_entered = response.lost_focus() && ui.input(|input| input.key_pressed(Key::Enter));
-    let outcome = match given {
-        None if entry.refusal.is_some() => Outcome::Refused,
-        None if stop.is_some() => Outcome::Filled,
-        None => Outcome::Empty,
-        Some(text) if is_block(&text) => {
-            entry = Entry::default();
-            take_block(press, place, &text, drafts, wishes);
-            Outcome::Block
-        }
-        Some(text) => take_stop(press, place, &text, &mut entry, drafts, wishes),
-    };
-    if is_entered {
-        match outcome {
-            Outcome::Filled => drafts.focus = Some((test, (cell + 1).min(MOST_STOPS - 1))),
-            Outcome::Empty | Outcome::Refused => drafts.focus = Some(place),
-            Outcome::Block => drafts.focus = drafts.focus.or(Some(place)),
-        }
-    }
-    if entry != Entry::default() {
-        drafts.cells.insert(place, entry);
-    }
-}
-
-/// What became of a cell, which decides where Enter goes.
-enum Outcome {
-    /// It holds a stop.
-    Filled,
-    /// It holds none.
-    Empty,
-    /// What was typed was refused.
-    Refused,
-    /// It took a block.
-    Block,
-}
-
-/// Takes one typed stop, or removes the stop where the text is empty.
-fn take_stop(
-    press: &Press,
-    (test, cell): (usize, usize),
-    text: &str,
-    entry: &mut Entry,
-    drafts: &mut GridDrafts,
-    wishes: &mut Wishes,
-) -> Outcome {
-    drafts.block.clear();
-    if text.trim().is_empty() {
-        *entry = Entry::default();
-        wishes.edit_press(press, format!("remove stop {}", cell + 1), move |press| {
-            if let Some(test) = press.stop_tests.get_mut(test)
-                && cell < test.stops.len()
-            {
-                test.stops.remove(cell);
+    let next = cell_id(press, (test, (cell + 1).min(MOST_STOPS - 1)));
+    match commit {
+        Some(Commit::Set(Typed::Stop(stop), moved)) => {
+            drafts.block.clear();
+            set_stops(press, place, vec![stop], format!("enter stop {}", cell + 1), wishes);
+            if moved == Moved::Enter {
+                drafts.cells.focus(next);
             }
-        });
-        return Outcome::Empty;
+        }
+        Some(Commit::Set(Typed::Block(text), _)) => take_block(press, place, &text, drafts, wishes),
+        Some(Commit::Cleared(moved)) => {
+            remove_stop(press, place, wishes);
+            if moved == Moved::Enter {
+                drafts.cells.focus(id);
+            }
+        }
+        // From a filled cell on to the next; in the empty one the cursor stays.
+        Some(Commit::Passed) => drafts.cells.focus(if taken.is_empty() { id } else { next }),
+        Some(Commit::Refused) if ui.input(|input| input.key_pressed(Key::Enter)) => drafts.cells.focus(id),
+        Some(Commit::Refused) | None => {}
     }
-    let Some(stop) = entry.settle(Time::parse(text, &STOPPING_TIME)) else { return Outcome::Refused };
-    set_stops(press, (test, cell), vec![stop], format!("enter stop {}", cell + 1), wishes);
-    Outcome::Filled
 }
 
-/// Takes a pasted block whole, or lists why not.
+/// What a cell was given.
+enum Typed {
+    /// One stop.
+    Stop(Time),
+    /// Several entries, which fill cells from this one on.
+    Block(String),
+}
+
+fn read_cell(text: &str) -> Result<Typed, Refusal> {
+    if is_block(text) { Ok(Typed::Block(text.to_owned())) } else { Time::parse(text, &STOPPING_TIME).map(Typed::Stop) }
+}
+
+/// Takes a block whole, or lists why not.
 fn take_block(press: &Press, (test, cell): (usize, usize), text: &str, drafts: &mut GridDrafts, wishes: &mut Wishes) {
     match read_block(text, MOST_STOPS - cell) {
         Ok(stops) => {
             drafts.block.clear();
-            drafts.cells.retain(|place, _| place.0 != test);
-            drafts.focus = Some((test, (cell + stops.len()).min(MOST_STOPS - 1)));
+            drafts.cells.focus(cell_id(press, (test, (cell + stops.len()).min(MOST_STOPS - 1))));
             let label = format!("paste stops {} to {}", cell + 1, cell + stops.len());
             set_stops(press, (test, cell), stops, label, wishes);
         }
@@ -379,6 +346,16 @@ fn take_block(press: &Press, (test, cell): (usize, usize), text: &str, drafts: &
             drafts.block = std::iter::once("Nothing was pasted.".to_owned()).chain(refused).collect();
         }
     }
+}
+
+fn remove_stop(press: &Press, (test, cell): (usize, usize), wishes: &mut Wishes) {
+    wishes.edit_press(press, format!("remove stop {}", cell + 1), move |press| {
+        if let Some(test) = press.stop_tests.get_mut(test)
+            && cell < test.stops.len()
+        {
+            test.stops.remove(cell);
+        }
+    });
 }
 
 /// Writes stops from a place on; places that hold a stop get the new one.

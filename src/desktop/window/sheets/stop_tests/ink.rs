@@ -1,6 +1,9 @@
 //! The colours of dial and dot plot.
 
-use eframe::egui::{Color32, Visuals};
+use egui::{Color32, Context};
+use figure::Role;
+
+use crate::window::theme;
 
 /// The colours of a drawing.
 #[derive(Clone, Copy, PartialEq, Debug)]
@@ -22,16 +25,17 @@ pub struct Ink {
 }
 
 impl Ink {
-    /// The colours of the theme.
-    pub fn of(visuals: &Visuals) -> Self {
+    /// The colours of the theme that is shown.
+    pub fn of(context: &Context) -> Self {
+        let colour = |role| theme::colour(context, role);
         Self {
-            text: visuals.text_color(),
-            faint: visuals.weak_text_color(),
-            line: visuals.widgets.noninteractive.bg_stroke.color,
-            accent: visuals.hyperlink_color,
-            bar: visuals.weak_text_color(),
-            limit: visuals.error_fg_color,
-            ground: visuals.panel_fill,
+            text: colour(Role::Ink),
+            faint: colour(Role::Faint),
+            line: colour(Role::Rule),
+            accent: colour(Role::Accent),
+            bar: colour(Role::Hatching),
+            limit: colour(Role::Short),
+            ground: colour(Role::Ground),
         }
     }
 }

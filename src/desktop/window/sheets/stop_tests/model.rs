@@ -116,10 +116,8 @@ fn detail(test: &StopTest) -> String {
 }
 
 fn standings(press: &Press, path: Option<StopPath>, governing: Option<usize>) -> Vec<Standing> {
-    let in_force: Vec<usize> = [StopPath::Normal, StopPath::Emergency]
-        .into_iter()
-        .flat_map(|path| tests_in_force(press, path))
-        .collect();
+    let in_force: Vec<usize> =
+        [StopPath::Normal, StopPath::Emergency].into_iter().flat_map(|path| tests_in_force(press, path)).collect();
     (0..press.stop_tests.len())
         .map(|index| {
             if !in_force.contains(&index) {
@@ -200,7 +198,10 @@ mod tests {
         // k(10; 95/95) = 2.911 (ISO 16269-6, one-sided): 183.7 + 2.911 x 1.888562 = 189.198.
         let figures = Figures::of(&ms(&[182, 185, 181, 184, 186, 183, 182, 187, 184, 183]), &plant_settings());
         let digits = |time: Option<Time>| column_figure(time.unwrap(), Towards::Greater);
-        assert_eq!((figures.count, digits(figures.mean), digits(figures.longest)), (10, "183.7".into(), "187.0".into()));
+        assert_eq!(
+            (figures.count, digits(figures.mean), digits(figures.longest)),
+            (10, "183.7".into(), "187.0".into())
+        );
         assert_eq!(figures.deviation, Some(Time::from_base(1_889)));
         assert_eq!((digits(figures.mean_plus_3_s), digits(figures.tolerance)), ("189.4".into(), "189.2".into()));
         assert_eq!(figures.taken, Some((ValueTaken::GreatestOrMeanPlus3s, Time::from_base(189_366))));
@@ -239,11 +240,7 @@ mod tests {
         let found = |press: &Press| standings(press, Some(StopPath::Normal), Some(1));
         assert_eq!(
             found(&press),
-            [
-                Standing::Superseded("replaced by the test of 2026-11-20".into()),
-                Standing::Governs,
-                Standing::Counts
-            ]
+            [Standing::Superseded("replaced by the test of 2026-11-20".into()), Standing::Governs, Standing::Counts]
         );
         press.stop_tests.push(stop_test("2026-11-25", 180, &[150; 10]));
         press.events.push(Event {
