@@ -17,7 +17,7 @@ pub fn strong_family() -> FontFamily {
 
 /// The heavier weight in this size.
 pub fn strong(size: f32) -> FontId {
-    FontId::unique(size, strong_family())
+    FontId::new(size, strong_family())
 }
 
 /// Puts fonts and style of both themes into a context, once, before the first frame.

@@ -1,7 +1,15 @@
 //! The sheets of a press.
 
+mod events;
+mod form;
+pub mod press;
 pub mod records;
 pub mod safeguards;
+pub mod stop_tests;
+
+#[cfg(test)]
+#[path = "../../tests/fixture/mod.rs"]
+mod sample;
 
 use egui::Ui;
 
@@ -38,8 +46,8 @@ impl Sheet {
     /// Shows it.
     pub fn ui(self, ui: &mut Ui, cx: &SheetContext, drafts: &mut SheetDrafts, wishes: &mut Wishes) {
         match self {
-            Self::Press => {}
-            Self::StopTests => {}
+            Self::Press => press::press_ui(ui, cx, &mut drafts.press, wishes),
+            Self::StopTests => stop_tests::stop_tests_ui(ui, cx, &mut drafts.stop_tests, wishes),
             Self::Safeguards => safeguards::safeguards_ui(ui, cx, &mut drafts.safeguards, wishes),
             Self::Records => records::records_ui(ui, cx, &mut drafts.records, wishes),
         }
@@ -49,6 +57,10 @@ impl Sheet {
 /// What is being typed on the sheets.
 #[derive(Default)]
 pub struct SheetDrafts {
+    /// On the sheet of the press.
+    pub press: press::PressDrafts,
+    /// On the sheet of stop tests.
+    pub stop_tests: stop_tests::StopTestsDrafts,
     /// On the sheet of safeguards.
     pub safeguards: safeguards::SafeguardsDrafts,
     /// On the sheet of records.
