@@ -11,11 +11,13 @@
 //! types of `calc`. An unreadable file never becomes an empty press; it is listed with its error and left untouched. Saves are
 //! whole or not at all, and never over somebody else's change.
 
+mod comma;
 mod folder;
 mod read;
 mod records;
 mod samples;
 pub mod v1;
+mod wording;
 mod write;
 
 pub use folder::{Known, Plant, StoredPress, create, open, open_press_file, save_press, save_settings};

@@ -9,6 +9,9 @@ use ron::extensions::Extensions;
 use serde::Deserialize;
 use serde::de::DeserializeOwned;
 
+use crate::comma::comma_between_digits;
+use crate::wording::words;
+
 /// Larger files are refused unread: a press with thirty years of monthly readings stays under 1 MB.
 pub const LARGEST_FILE: u64 = 8 * 1024 * 1024;
 
@@ -106,33 +109,40 @@ struct Version {
 
 /// Reads the version of a stored text, whatever else stands in it.
 pub fn version_of(path: &Path, text: &str) -> Result<u32, FileRefusal> {
-    options()
-        .from_str::<Version>(text)
-        .map(|read| read.version)
-        .map_err(|error| at_place(path, error.span.start.line, error.span.start.col, None, &error.code.to_string()))
+    options().from_str::<Version>(text).map(|read| read.version).map_err(|error| {
+        // A decimal comma also spoils the reading of the version, and its own refusal says more.
+        refuse_decimal_comma(path, text).err().unwrap_or_else(|| at_place(path, &error, None))
+    })
+}
+
+fn refuse_decimal_comma(path: &Path, text: &str) -> Result<(), FileRefusal> {
+    let Some(place) = comma_between_digits(text) else { return Ok(()) };
+    let why = "A comma stands between two digits. Write a point for decimals, and a blank behind the comma in a list.";
+    Err(FileRefusal { place: Some(place), ..FileRefusal::whole(path, why) })
 }
 
 /// Reads one shape from a text; the refusal names line, column and field.
 pub fn parse<T: DeserializeOwned>(path: &Path, text: &str) -> Result<T, FileRefusal> {
-    let mut reader = ron::Deserializer::from_str_with_options(text, &options())
-        .map_err(|error| at_place(path, error.span.start.line, error.span.start.col, None, &error.code.to_string()))?;
+    if let Some(place) = comma_between_digits(text) {
+        let why =
+            "A comma stands between two digits. Write a point for decimals, and a blank behind the comma in a list.";
+        return Err(FileRefusal { place: Some(place), ..FileRefusal::whole(path, why) });
+    }
+    let mut reader =
+        ron::Deserializer::from_str_with_options(text, &options()).map_err(|error| at_place(path, &error, None))?;
     let read = serde_path_to_error::deserialize(&mut reader);
     let value = read.map_err(|error| {
         let field = error.path().to_string();
-        let spanned = reader.span_error(error.into_inner());
-        at_place(path, spanned.span.start.line, spanned.span.start.col, Some(field), &spanned.code.to_string())
+        at_place(path, &reader.span_error(error.into_inner()), Some(field))
     })?;
-    reader.end().map_err(|error| {
-        let spanned = reader.span_error(error);
-        at_place(path, spanned.span.start.line, spanned.span.start.col, None, &spanned.code.to_string())
-    })?;
+    reader.end().map_err(|error| at_place(path, &reader.span_error(error), None))?;
     Ok(value)
 }
 
-fn at_place(path: &Path, line: usize, column: usize, field: Option<String>, why: &str) -> FileRefusal {
+fn at_place(path: &Path, error: &ron::error::SpannedError, field: Option<String>) -> FileRefusal {
     let field = field.filter(|field| !matches!(field.as_str(), "." | "?" | ""));
-    let why = if why.ends_with('.') { why.to_owned() } else { format!("{why}.") };
-    FileRefusal { path: path.into(), place: Some((line, column)), field, why }
+    let start = error.span.start;
+    FileRefusal { path: path.into(), place: Some((start.line, start.col)), field, why: words(&error.code) }
 }
 
 /// Optional fields are written without `Some(...)`.

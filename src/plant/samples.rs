@@ -13,7 +13,23 @@ macro_rules! samples {
     };
 }
 
-samples!["plant.ron"];
+samples![
+    "plant.ron",
+    "presses/E-101.ron",
+    "presses/E-102.ron",
+    "presses/E-103.ron",
+    "presses/E-104.ron",
+    "presses/E-105.ron",
+    "presses/E-106.ron",
+    "presses/E-107.ron",
+    "presses/E-108.ron",
+    "presses/E-109.ron",
+    "presses/E-110.ron",
+    "presses/E-111.ron",
+    "presses/E-112.ron",
+    "presses/E-113.ron",
+    "presses/E-114.ron",
+];
 
 /// Writes the sample plant into a folder.
 ///

@@ -2,6 +2,7 @@
 
 use calc::calendar::{Moment, parse_date};
 use calc::limits::{self, Limit};
+use calc::press::check_tag;
 use jiff::civil::Date;
 use serde::de::Error;
 use serde::{Deserialize, Deserializer, Serialize, Serializer};
@@ -145,6 +146,24 @@ impl Serialize for Day {
 impl<'de> Deserialize<'de> for Day {
     fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
         parse_date("Date", &String::deserialize(deserializer)?).map(Self).map_err(D::Error::custom)
+    }
+}
+
+/// A press tag.
+#[derive(Clone, PartialEq, Eq, Debug)]
+pub struct Tag(pub String);
+
+impl Serialize for Tag {
+    fn serialize<S: Serializer>(&self, serializer: S) -> Result<S::Ok, S::Error> {
+        serializer.serialize_str(&self.0)
+    }
+}
+
+impl<'de> Deserialize<'de> for Tag {
+    fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
+        let tag = String::deserialize(deserializer)?;
+        check_tag(&tag).map_err(D::Error::custom)?;
+        Ok(Self(tag))
     }
 }
 

@@ -45,7 +45,6 @@ pub(super) fn file_of_settings(settings: &PlantSettings) -> PlantFile {
 
 /// What a file asks for that cannot be: in words.
 pub(super) fn press_of(file: PressFile) -> Result<Press, String> {
-    press::check_tag(&file.tag).map_err(|refusal| refusal.to_string())?;
     let mut names: Vec<&str> = file.safeguards.iter().map(|safeguard| safeguard.name.as_str()).collect();
     names.sort_unstable();
     if let Some(twice) = names.windows(2).find(|pair| pair[0] == pair[1]) {
@@ -67,7 +66,7 @@ pub(super) fn press_of(file: PressFile) -> Result<Press, String> {
         });
     }
     Ok(Press {
-        tag: file.tag,
+        tag: file.tag.0,
         description: file.description,
         serial: file.serial,
         location: file.location,
@@ -117,7 +116,7 @@ pub(super) fn press_of(file: PressFile) -> Result<Press, String> {
 pub(super) fn file_of_press(press: &Press) -> PressFile {
     PressFile {
         version: VERSION,
-        tag: press.tag.clone(),
+        tag: Tag(press.tag.clone()),
         description: press.description.clone(),
         serial: press.serial.clone(),
         location: press.location.clone(),

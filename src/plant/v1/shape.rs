@@ -35,7 +35,7 @@ stored! {
     /// `presses/<tag>.ron`
     struct PressFile {
         version: u32,
-        tag: String,
+        tag: Tag,
         description: String,
         serial: String,
         location: String,
