@@ -1,0 +1,412 @@
+//! From clutch release to standstill: the equation of motion, stepped with error control, and the exact moment of standstill.
+//!
+//!     J dw/dt + 1/2 J' w^2 = (m g - F_cb) s' - T_f - T_b(t),   J = J_rot + m s'^2
+//!
+//! Every corner of the brake torque ends a step. Standstill is found by taking the last step again with other lengths until its speed is
+//! zero: the root of the Runge-Kutta step itself, not of the interpolant, so its error is that of the step.
+
+use super::dormand_prince::{Motion, Rates, State, Step};
+use super::drive::{Drive, Kinematics};
+use super::refusal::MotionRefusal;
+use super::torque_law::{Shape, TorqueLaw};
+
+/// Longest stop that is calculated, counted from the stop command.
+pub(super) const STOP_TIME_S_MAX: f64 = 10.0;
+
+/// Longest way that is calculated, counted from the stop command: two turns.
+pub(super) const STOP_ANGLE_RAD_MAX: f64 = 2.0 * core::f64::consts::TAU;
+
+/// Steps on trial, accepted or not. A usual stop takes ten to thirty.
+const STEPS_MAX: usize = 20_000;
+
+/// How far the stated error exceeds the sum of the local error estimates, for errors that grow on the way.
+const ERROR_GROWTH: f64 = 4.0;
+
+/// Energy that may be unaccounted for, as a multiple of the relative tolerance and share of the energy turned over.
+const ENERGY_SHARE_PER_TOLERANCE: f64 = 100.0;
+
+/// Rounding alone leaves a few parts in 10^14 of the energy turned over.
+const ENERGY_SHARE_ROUNDING: f64 = 1e-13;
+
+/// The crank at clutch release and at standstill.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Standstill {
+    pub(super) time_s: f64,
+    pub(super) angle_rad: f64,
+    pub(super) brake_torque_nm: f64,
+    /// After clutch release.
+    pub(super) brake_work_j: f64,
+    pub(super) kinetic_energy_j: f64,
+    pub(super) gravity_work_j: f64,
+    pub(super) friction_work_j: f64,
+    pub(super) release_angle_rad: f64,
+    pub(super) time_error_s: f64,
+}
+
+/// Travel and its slopes, known at compile time so that the inner loop has no branch on the kind of drive.
+trait Travel {
+    fn travel_m(&self, angle_rad: f64) -> f64;
+    fn slopes(&self, angle_rad: f64) -> (f64, f64);
+}
+
+impl Travel for super::slider_crank::SliderCrank {
+    fn travel_m(&self, angle_rad: f64) -> f64 {
+        self.travel_m(angle_rad)
+    }
+    #[inline]
+    fn slopes(&self, angle_rad: f64) -> (f64, f64) {
+        self.slopes(angle_rad)
+    }
+}
+
+impl Travel for super::link_drive::LinkDrive {
+    fn travel_m(&self, angle_rad: f64) -> f64 {
+        self.travel_m(angle_rad)
+    }
+    #[inline]
+    fn slopes(&self, angle_rad: f64) -> (f64, f64) {
+        self.slopes(angle_rad)
+    }
+}
+
+/// The figures of the equation of motion that do not change during a stop.
+struct Crank<'a, T> {
+    travel: &'a T,
+    reduced_inertia_kg_m2: f64,
+    mass_kg: f64,
+    net_weight_n: f64,
+    friction_torque_nm: f64,
+}
+
+impl<T: Travel> Crank<'_, T> {
+    fn kinetic_energy_j(&self, angle_rad: f64, speed_rad_s: f64) -> f64 {
+        let (first, _) = self.travel.slopes(angle_rad);
+        0.5 * (self.reduced_inertia_kg_m2 + self.mass_kg * first * first)
+            * speed_rad_s
+            * speed_rad_s
+    }
+}
+
+/// The equation of motion on one smooth stretch of the brake torque.
+struct Stretch<'a, T> {
+    crank: &'a Crank<'a, T>,
+    shape: Shape,
+}
+
+impl<T: Travel> Motion for Stretch<'_, T> {
+    #[inline]
+    fn rates(&self, since_s: f64, angle_rad: f64, speed_rad_s: f64) -> Rates {
+        let crank = self.crank;
+        let (first, second) = crank.travel.slopes(angle_rad);
+        let torque_nm = self.shape.torque_nm(since_s);
+        let moved = crank.mass_kg * first;
+        let inertia = crank.reduced_inertia_kg_m2 + moved * first;
+        let drive_on = crank.net_weight_n * first
+            - crank.friction_torque_nm
+            - torque_nm
+            - moved * second * speed_rad_s * speed_rad_s;
+        Rates {
+            speed: speed_rad_s,
+            acceleration: drive_on / inertia,
+            power: torque_nm * speed_rad_s,
+        }
+    }
+}
+
+/// Runs one stop. `watch` sees every accepted step with the time at which it begins.
+pub(super) fn run_to_standstill(
+    drive: &Drive,
+    law: &TorqueLaw,
+    start_angle_rad: f64,
+    speed_rad_s: f64,
+    tolerance: f64,
+    watch: impl FnMut(f64, &Step),
+) -> Result<Standstill, MotionRefusal> {
+    let run = Run {
+        law,
+        start_angle_rad,
+        speed_rad_s,
+        tolerance,
+    };
+    match drive.kinematics() {
+        Kinematics::SliderCrank(travel) => run.solve(&crank_of(drive, travel), watch),
+        Kinematics::LinkDrive(travel) => run.solve(&crank_of(drive, travel), watch),
+    }
+}
+
+fn crank_of<'a, T>(drive: &Drive, travel: &'a T) -> Crank<'a, T> {
+    Crank {
+        travel,
+        reduced_inertia_kg_m2: drive.data().reduced_inertia_kg_m2,
+        mass_kg: drive.moved_mass_kg(),
+        net_weight_n: drive.net_weight_n(),
+        friction_torque_nm: drive.data().friction_torque_nm,
+    }
+}
+
+/// One stop command under one torque law.
+struct Run<'a> {
+    law: &'a TorqueLaw,
+    start_angle_rad: f64,
+    speed_rad_s: f64,
+    tolerance: f64,
+}
+
+/// Sums of the local error estimates.
+#[derive(Default)]
+struct Errors {
+    speed_rad_s: f64,
+}
+
+impl Run<'_> {
+    fn solve<T: Travel>(
+        &self,
+        crank: &Crank<'_, T>,
+        mut watch: impl FnMut(f64, &Step),
+    ) -> Result<Standstill, MotionRefusal> {
+        let release_s = self.law.clutch_release_s();
+        let release_angle_rad = self.start_angle_rad + self.speed_rad_s * release_s;
+        self.check_limits(release_s, release_angle_rad)?;
+        let mut state = State {
+            angle_rad: release_angle_rad,
+            speed_rad_s: self.speed_rad_s,
+            brake_work_j: 0.0,
+        };
+        let mut errors = Errors::default();
+        let mut steps = 0;
+        // First guess: an angle over which the method is known to keep the tolerance; the error control corrects it.
+        let mut length_s = 12.0 * fifth_root(self.tolerance) / self.speed_rad_s;
+        for piece in self.law.pieces_after_release() {
+            let stretch = Stretch {
+                crank,
+                shape: piece.shape,
+            };
+            let piece_s = piece.end_s - piece.start_s;
+            let mut since_s = 0.0;
+            let mut rates = stretch.rates(0.0, state.angle_rad, state.speed_rad_s);
+            while since_s < piece_s {
+                steps += 1;
+                if STEPS_MAX < steps {
+                    return Err(MotionRefusal::StepLimit { steps: STEPS_MAX });
+                }
+                let left_s = piece_s - since_s;
+                let wanted_s = until_just_after_standstill(&state, &rates, length_s);
+                let reaches_corner = left_s <= 1.000_001 * wanted_s;
+                let trial_s = if reaches_corner { left_s } else { wanted_s };
+                let step = Step::take(&stretch, since_s, state, rates, trial_s);
+                let share = self.error_share(&step);
+                let growth = if share.is_finite() {
+                    (0.9 / fifth_root(share.max(1e-10))).clamp(0.2, 6.0)
+                } else {
+                    0.2
+                };
+                // A comparison that NaN fails, so that a step gone astray is taken again.
+                if !(share <= 1.0) {
+                    length_s = trial_s * growth.min(0.9);
+                    continue;
+                }
+                // A step cut short by a corner or by standstill says nothing against the longer one wanted before.
+                length_s = (trial_s * growth).max(if trial_s < length_s { length_s } else { 0.0 });
+                if let Some(bracket_s) = standstill_bracket(&stretch, since_s, &step) {
+                    let last = locate_standstill(&stretch, since_s, &step, bracket_s);
+                    errors.add(&last);
+                    watch(piece.start_s + since_s, &last);
+                    let time_s = piece.start_s + since_s + last.length_s;
+                    let brake_torque_nm = piece.shape.torque_nm(since_s + last.length_s);
+                    return self.finish(crank, release_angle_rad, &last, time_s, brake_torque_nm, &errors);
+                }
+                errors.add(&step);
+                watch(piece.start_s + since_s, &step);
+                since_s = if reaches_corner { piece_s } else { since_s + trial_s };
+                state = step.after;
+                rates = *step.rates_after();
+                self.check_limits(piece.start_s + since_s, state.angle_rad)?;
+            }
+        }
+        // The last piece of a torque law never ends, so the loop above always returns; a law that did end has no standstill.
+        Err(MotionRefusal::NoStandstillInTime {
+            limit_s: STOP_TIME_S_MAX,
+        })
+    }
+
+    /// Estimated local error as a share of what the tolerance allows.
+    fn error_share(&self, step: &Step) -> f64 {
+        let allowed = self.tolerance * self.speed_rad_s;
+        let speed = step.error_speed_rad_s.abs() / allowed;
+        let angle = step.error_angle_rad.abs() / (allowed * step.length_s);
+        // `max` would let a NaN pass.
+        if speed < angle { angle } else { speed }
+    }
+
+    fn check_limits(&self, time_s: f64, angle_rad: f64) -> Result<(), MotionRefusal> {
+        if STOP_TIME_S_MAX < time_s {
+            return Err(MotionRefusal::NoStandstillInTime {
+                limit_s: STOP_TIME_S_MAX,
+            });
+        }
+        if STOP_ANGLE_RAD_MAX < angle_rad - self.start_angle_rad {
+            return Err(MotionRefusal::NoStandstillInAngle {
+                limit_rad: STOP_ANGLE_RAD_MAX,
+            });
+        }
+        Ok(())
+    }
+
+    fn finish<T: Travel>(
+        &self,
+        crank: &Crank<'_, T>,
+        release_angle_rad: f64,
+        last: &Step,
+        time_s: f64,
+        brake_torque_nm: f64,
+        errors: &Errors,
+    ) -> Result<Standstill, MotionRefusal> {
+        let angle_rad = last.after.angle_rad;
+        self.check_limits(time_s, angle_rad)?;
+        let way_m = crank.travel.travel_m(angle_rad) - crank.travel.travel_m(release_angle_rad);
+        let found = Standstill {
+            time_s,
+            angle_rad,
+            brake_torque_nm,
+            brake_work_j: last.after.brake_work_j,
+            kinetic_energy_j: crank.kinetic_energy_j(release_angle_rad, self.speed_rad_s),
+            gravity_work_j: crank.net_weight_n * way_m,
+            friction_work_j: crank.friction_torque_nm * (angle_rad - release_angle_rad),
+            release_angle_rad,
+            time_error_s: ERROR_GROWTH * errors.speed_rad_s
+                / last.rates_after().acceleration.abs()
+                + 16.0 * f64::EPSILON * time_s,
+        };
+        let turned_over =
+            found.kinetic_energy_j + found.gravity_work_j.abs() + found.friction_work_j;
+        let missing = found.kinetic_energy_j + found.gravity_work_j
+            - found.friction_work_j
+            - found.brake_work_j;
+        let share = missing.abs() / turned_over;
+        let share_max = ENERGY_SHARE_PER_TOLERANCE * self.tolerance + ENERGY_SHARE_ROUNDING;
+        if share <= share_max {
+            Ok(found)
+        } else {
+            Err(MotionRefusal::EnergyNotBalanced { share, share_max })
+        }
+    }
+}
+
+impl Errors {
+    fn add(&mut self, step: &Step) {
+        self.speed_rad_s += step.error_speed_rad_s.abs();
+    }
+}
+
+/// Steps reach a little past the standstill foreseen: a standstill inside the step is found, one just beyond it would cost another step.
+fn until_just_after_standstill(state: &State, rates: &Rates, length_s: f64) -> f64 {
+    let foreseen_s = -1.2 * state.speed_rad_s / rates.acceleration;
+    if 0.0 < foreseen_s && foreseen_s < length_s {
+        foreseen_s
+    } else {
+        length_s
+    }
+}
+
+/// Length of a step, at most this one's, whose end has no speed left; none if the crank turns all the way.
+fn standstill_bracket(motion: &impl Motion, since_s: f64, step: &Step) -> Option<f64> {
+    if step.after.speed_rad_s <= 0.0 {
+        return Some(step.length_s);
+    }
+    let dips = step.rates_before().acceleration < 0.0 && 0.0 < step.rates_after().acceleration;
+    if !dips {
+        return None;
+    }
+    // Slower, then faster again: the least speed in between may be below zero. Halving on the sign of the acceleration finds it.
+    let (mut low, mut high) = (0.0, step.length_s);
+    let mut least = None;
+    for _ in 0..60 {
+        let middle = 0.5 * (low + high);
+        let part = Step::take(motion, since_s, step.before, *step.rates_before(), middle);
+        if part.after.speed_rad_s <= 0.0 {
+            least = Some(middle);
+            break;
+        }
+        // Far from zero: the interpolant is good enough to say that nothing can happen.
+        if part.rates_after().acceleration < 0.0 {
+            low = middle;
+        } else {
+            high = middle;
+        }
+        let reach = (high - low)
+            * (part.rates_after().acceleration.abs() + step.rates_after().acceleration.abs());
+        if reach < 1e-3 * part.after.speed_rad_s {
+            break;
+        }
+    }
+    least
+}
+
+/// The step that ends at standstill. At `bracket_s` the speed is zero or below, at the start above.
+fn locate_standstill(motion: &impl Motion, since_s: f64, step: &Step, bracket_s: f64) -> Step {
+    let (mut low, mut high) = (0.0, bracket_s);
+    let mut length_s = first_guess(step, bracket_s);
+    let mut trial = *step;
+    for _ in 0..80 {
+        trial = Step::take(motion, since_s, step.before, *step.rates_before(), length_s);
+        let speed = trial.after.speed_rad_s;
+        if speed <= 0.0 {
+            high = length_s;
+        } else {
+            low = length_s;
+        }
+        // Newton's method: the speed changes with the length of the step as the acceleration at its end, up to the error of the step.
+        let correction_s = -speed / trial.rates_after().acceleration;
+        if correction_s.abs() <= 1e-7 * length_s {
+            // What is left is second order: below 1e-14 of the step.
+            trial.length_s += correction_s;
+            trial.after.angle_rad += 0.5 * speed * correction_s;
+            trial.after.brake_work_j += 0.5 * trial.rates_after().power * correction_s;
+            trial.after.speed_rad_s = 0.0;
+            return trial;
+        }
+        let newton = length_s + correction_s;
+        length_s = if low < newton && newton < high {
+            newton
+        } else {
+            0.5 * (low + high)
+        };
+        if high - low <= f64::EPSILON * high {
+            break;
+        }
+    }
+    trial.after.speed_rad_s = 0.0;
+    trial
+}
+
+/// Where the interpolated speed is zero; a few secant steps are enough for a first guess.
+fn first_guess(step: &Step, bracket_s: f64) -> f64 {
+    let (mut low, mut high) = (0.0, bracket_s / step.length_s);
+    let mut low_speed = step.before.speed_rad_s;
+    let mut high_speed = step.speed_rad_s(high);
+    for _ in 0..12 {
+        if 0.0 <= high_speed {
+            break;
+        }
+        let secant = low + (high - low) * low_speed / (low_speed - high_speed);
+        let speed = step.speed_rad_s(secant);
+        if speed.abs() <= 1e-9 * step.before.speed_rad_s {
+            return secant * step.length_s;
+        }
+        if speed < 0.0 {
+            high = secant;
+            high_speed = speed;
+            // Illinois rule: the end that stays counts half, so that both ends move.
+            low_speed *= 0.5;
+        } else {
+            low = secant;
+            low_speed = speed;
+            high_speed *= 0.5;
+        }
+    }
+    0.5 * (low + high) * step.length_s
+}
+
+fn fifth_root(x: f64) -> f64 {
+    libm::exp(0.2 * libm::log(x))
+}
