@@ -95,10 +95,7 @@ impl LinkDrive {
     pub fn slopes(&self, angle_rad: f64) -> (f64, f64) {
         let (stretch, x) = self.at(angle_rad);
         let [_, c1, c2, c3] = stretch.coefficients;
-        (
-            c1 + x * (2.0 * c2 + 3.0 * x * c3),
-            2.0 * c2 + 6.0 * x * c3,
-        )
+        (c1 + x * (2.0 * c2 + 3.0 * x * c3), 2.0 * c2 + 6.0 * x * c3)
     }
 
     #[inline]
@@ -179,11 +176,15 @@ fn periodic_spline(rows: &[TravelRow]) -> Vec<Stretch> {
         .map(|i| (travel(i + 1) - travel(i)) / width[i])
         .collect();
     let before = |i: usize| (i + n - 1) % n;
-    let right: Vec<f64> = (0..n).map(|i| 6.0 * (chord[i] - chord[before(i)])).collect();
+    let right: Vec<f64> = (0..n)
+        .map(|i| 6.0 * (chord[i] - chord[before(i)]))
+        .collect();
 
     let corner = width[n - 1];
     let gamma = -2.0 * (width[n - 1] + width[0]);
-    let mut diagonal: Vec<f64> = (0..n).map(|i| 2.0 * (width[before(i)] + width[i])).collect();
+    let mut diagonal: Vec<f64> = (0..n)
+        .map(|i| 2.0 * (width[before(i)] + width[i]))
+        .collect();
     diagonal[0] -= gamma;
     diagonal[n - 1] -= corner * corner / gamma;
     let mut bend = vec![0.0; n];

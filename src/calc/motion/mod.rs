@@ -16,9 +16,9 @@ mod brake_condition;
 mod curves;
 mod dormand_prince;
 mod drive;
-// mod fit;
-// mod fit_inference;
-// mod least_squares;
+mod fit;
+mod fit_inference;
+mod least_squares;
 mod limits;
 mod link_drive;
 mod map;
@@ -26,7 +26,7 @@ mod refusal;
 mod slider_crank;
 mod solver;
 mod stop;
-// mod student_t;
+mod student_t;
 mod torque_law;
 mod what_if;
 
@@ -42,6 +42,10 @@ pub use drive::{
     Counterbalance, Drive, DriveData, Kinematics, STANDARD_GRAVITY_M_S2, rad_from_deg,
     rad_s_from_per_min,
 };
+pub use fit::{
+    FitCondition, FitRequest, FittedBrake, FittedCondition, StopPrediction, Unknowns, fit_stops,
+};
+pub use fit_inference::Estimate;
 pub use limits::Limit;
 pub use link_drive::{LinkDrive, ROWS_LEAST, ROWS_MOST, TravelRow};
 pub use map::{AngleRange, GoOn, MapCell, MapRow, StopMap, WorstCell, WorstStop};

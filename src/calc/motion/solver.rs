@@ -213,11 +213,22 @@ impl Run<'_> {
                     watch(piece.start_s + since_s, &last);
                     let time_s = piece.start_s + since_s + last.length_s;
                     let brake_torque_nm = piece.shape.torque_nm(since_s + last.length_s);
-                    return self.finish(crank, release_angle_rad, &last, time_s, brake_torque_nm, &errors);
+                    return self.finish(
+                        crank,
+                        release_angle_rad,
+                        &last,
+                        time_s,
+                        brake_torque_nm,
+                        &errors,
+                    );
                 }
                 errors.add(&step);
                 watch(piece.start_s + since_s, &step);
-                since_s = if reaches_corner { piece_s } else { since_s + trial_s };
+                since_s = if reaches_corner {
+                    piece_s
+                } else {
+                    since_s + trial_s
+                };
                 state = step.after;
                 rates = *step.rates_after();
                 self.check_limits(piece.start_s + since_s, state.angle_rad)?;
@@ -273,8 +284,7 @@ impl Run<'_> {
             gravity_work_j: crank.net_weight_n * way_m,
             friction_work_j: crank.friction_torque_nm * (angle_rad - release_angle_rad),
             release_angle_rad,
-            time_error_s: ERROR_GROWTH * errors.speed_rad_s
-                / last.rates_after().acceleration.abs()
+            time_error_s: ERROR_GROWTH * errors.speed_rad_s / last.rates_after().acceleration.abs()
                 + 16.0 * f64::EPSILON * time_s,
         };
         let turned_over =

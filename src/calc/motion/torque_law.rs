@@ -121,10 +121,8 @@ impl TorqueLaw {
         let pressure = pressure_pieces(data, path);
         let clutch_release_s = time_at_pressure(&pressure, data.clutch_release_pressure_pa);
         let touch_s = time_at_pressure(&pressure, data.touch_pressure_pa);
-        let built_up_s = time_at_pressure(
-            &pressure,
-            BUILT_UP_MISSING_SHARE * data.touch_pressure_pa,
-        );
+        let built_up_s =
+            time_at_pressure(&pressure, BUILT_UP_MISSING_SHARE * data.touch_pressure_pa);
         let mut corners: Vec<f64> = pressure.iter().map(|piece| piece.start_s).collect();
         corners.extend([0.0, clutch_release_s, touch_s]);
         corners.sort_by(f64::total_cmp);

@@ -91,9 +91,10 @@ impl StopSetup {
                 changed.brake = self.brake.with_condition(&condition)?;
             }
             Change::OperatingPressure { pressure_pa } => {
-                changed.brake = self.change_pressure_brake("another operating pressure", |brake| {
-                    brake.with_operating_pressure(pressure_pa)
-                })?;
+                changed.brake = self
+                    .change_pressure_brake("another operating pressure", |brake| {
+                        brake.with_operating_pressure(pressure_pa)
+                    })?;
             }
             Change::MeteredTimeConstant { time_constant_s } => {
                 changed.brake = self
