@@ -1,11 +1,10 @@
 //! A stop drawn over time: crank speed, slide speed, travel, brake torque and pressure.
 
-use super::dormand_prince::Step;
 use super::drive::Drive;
 use super::limits;
 use super::refusal::MotionRefusal;
 use super::solver::run_to_standstill;
-use super::stop::{Stop, StopCommand, Tolerance, stop_from};
+use super::stop::{Stop, StopCommand, Tolerance, stop};
 use super::torque_law::TorqueLaw;
 
 /// One moment of a stop.
@@ -38,8 +37,7 @@ pub struct StopCurves {
 
 /// Predicts one stop and samples it at `intervals + 1` evenly spaced moments from the stop command to standstill.
 ///
-/// Between the steps of the solver the curves are interpolated to fourth order: exact enough to draw, while the figures of the stop come
-/// from the steps themselves.
+/// Every point is as exact as the stop itself: it comes from a shortened step of the solver, not from an interpolation.
 ///
 /// # Refuses
 /// As [`super::stop()`]; [`MotionRefusal::MapSize`] for no or more than 100,000 intervals.
@@ -57,39 +55,36 @@ pub fn stop_curves(
             greatest: limits::INTERVALS_MAX,
         });
     }
-    let mut steps: Vec<(f64, Step)> = Vec::new();
+    let stop = stop(drive, law, command, tolerance)?;
+    let moment_s = |index: usize| stop.stop_time_s * index as f64 / intervals as f64;
+    let speed = command.speed_rad_s();
+    let mut points = Vec::with_capacity(intervals + 1);
+    while points.len() < intervals && moment_s(points.len()) <= law.clutch_release_s() {
+        let time_s = moment_s(points.len());
+        let angle = command.start_angle_rad() + speed * time_s;
+        points.push(point(drive, law, time_s, angle, speed));
+    }
     let found = run_to_standstill(
         drive,
         law,
         command.start_angle_rad(),
-        command.speed_rad_s(),
+        speed,
         tolerance.relative(),
-        |start_s, step| steps.push((start_s, *step)),
+        |start_s, length_s, state_after| {
+            while points.len() < intervals && moment_s(points.len()) <= start_s + length_s {
+                let time_s = moment_s(points.len());
+                let state = state_after(time_s - start_s);
+                points.push(point(
+                    drive,
+                    law,
+                    time_s,
+                    state.angle_rad,
+                    state.speed_rad_s,
+                ));
+            }
+        },
     )?;
-    let stop = stop_from(drive, law, command, &found)?;
-    let points = (0..=intervals)
-        .map(|index| {
-            if index == intervals {
-                return point(drive, law, found.time_s, found.angle_rad, 0.0);
-            }
-            let time_s = found.time_s * index as f64 / intervals as f64;
-            if time_s <= law.clutch_release_s() {
-                let speed = command.speed_rad_s();
-                let angle = command.start_angle_rad() + speed * time_s;
-                return point(drive, law, time_s, angle, speed);
-            }
-            let after = steps.partition_point(|(start_s, _)| *start_s <= time_s);
-            let (start_s, step) = &steps[after.max(1) - 1];
-            let share = (time_s - start_s) / step.length_s;
-            point(
-                drive,
-                law,
-                time_s,
-                step.angle_rad(share),
-                step.speed_rad_s(share),
-            )
-        })
-        .collect();
+    points.push(point(drive, law, found.time_s, found.angle_rad, 0.0));
     Ok(StopCurves { stop, points })
 }
 

@@ -158,7 +158,7 @@ pub fn stop(
         command.start_angle_rad,
         command.speed_rad_s,
         tolerance.0,
-        |_, _| {},
+        |_, _, _| {},
     )?;
     stop_from(drive, law, command, &found)
 }

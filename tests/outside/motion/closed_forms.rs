@@ -169,7 +169,7 @@ fn stop_with_first_order_build_up() {
     near(
         found.brake_heat_j,
         0.5 * inertia * w0 * w0 + drag_j,
-        1e-11,
+        1e-9,
         "brake heat",
     );
 }

@@ -52,21 +52,26 @@ fn halved_tolerance_moves_the_stop_time_by_less_than_the_stated_error() {
 
 #[test]
 fn stated_error_covers_the_error() {
+    let mut greatest_share = 0.0_f64;
+    let mut greatest_stated = 0.0_f64;
     for_each_case(|solve| {
         if let Some(truth) = solve(1e-13) {
             for tolerance in [1e-5, 1e-7, 1e-9] {
                 let found = solve(tolerance).unwrap();
                 let error = (found.stop_time_s - truth.stop_time_s).abs();
-                assert!(
-                    error <= found.stop_time_error_s + truth.stop_time_error_s,
-                    "{tolerance}: off by {error}, stated {}",
-                    found.stop_time_error_s
-                );
-                // A stated error is worth something only if it is small.
-                assert!(found.stop_time_error_s < 2e3 * tolerance * found.stop_time_s);
+                greatest_share =
+                    greatest_share.max(error / (found.stop_time_error_s + truth.stop_time_error_s));
+                greatest_stated =
+                    greatest_stated.max(found.stop_time_error_s / (tolerance * found.stop_time_s));
             }
         }
     });
+    println!(
+        "greatest error {greatest_share:.3} of the stated one; greatest stated error {greatest_stated:.3} x tolerance x stop time"
+    );
+    assert!(greatest_share <= 1.0, "{greatest_share}");
+    // A stated error is worth something only if it is small.
+    assert!(greatest_stated < 2e3, "{greatest_stated}");
 }
 
 #[test]
