@@ -43,6 +43,37 @@ impl Stretch {
     }
 }
 
+/// One stretch of the spline in one turn of the crank, continued smoothly beyond its ends.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct StretchInTurn<'a> {
+    link: &'a LinkDrive,
+    index: usize,
+    coefficients: [f64; 4],
+    start_rad: f64,
+    end_rad: f64,
+}
+
+impl StretchInTurn<'_> {
+    /// Slopes of this stretch, also beyond its ends.
+    #[inline]
+    pub(super) fn slopes(&self, angle_rad: f64) -> (f64, f64) {
+        let [_, c1, c2, c3] = self.coefficients;
+        let x = angle_rad - self.start_rad;
+        (c1 + x * (2.0 * c2 + 3.0 * x * c3), 2.0 * c2 + 6.0 * x * c3)
+    }
+
+    /// Where the next stretch begins. The third derivative of the travel jumps there.
+    pub(super) fn end_rad(&self) -> f64 {
+        self.end_rad
+    }
+
+    /// The stretch that follows.
+    pub(super) fn next(&self) -> Self {
+        let index = (self.index + 1) % self.link.stretches.len();
+        self.link.stretch_from(index, self.end_rad)
+    }
+}
+
 /// A drive given by a table: links, knuckle joints, eccentric gears.
 #[derive(Clone, Debug, PartialEq)]
 pub struct LinkDrive {
@@ -96,6 +127,31 @@ impl LinkDrive {
         let (stretch, x) = self.at(angle_rad);
         let [_, c1, c2, c3] = stretch.coefficients;
         (c1 + x * (2.0 * c2 + 3.0 * x * c3), 2.0 * c2 + 6.0 * x * c3)
+    }
+
+    /// The stretch at an angle.
+    pub(super) fn stretch_in_turn(&self, angle_rad: f64) -> StretchInTurn<'_> {
+        let turns = TAU * (angle_rad * (1.0 / TAU)).floor();
+        let after = self
+            .stretches
+            .partition_point(|stretch| stretch.start_rad <= angle_rad - turns);
+        let index = after.max(1) - 1;
+        self.stretch_from(index, turns + self.stretches[index].start_rad)
+    }
+
+    fn stretch_from(&self, index: usize, start_rad: f64) -> StretchInTurn<'_> {
+        let Stretch {
+            width_rad,
+            coefficients,
+            ..
+        } = self.stretches[index];
+        StretchInTurn {
+            link: self,
+            index,
+            coefficients,
+            start_rad,
+            end_rad: start_rad + width_rad,
+        }
     }
 
     #[inline]

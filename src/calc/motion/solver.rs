@@ -6,8 +6,10 @@
 //! zero: the root of the Runge-Kutta step itself, not of the interpolant, so its error is that of the step.
 
 use super::drive::{Drive, Kinematics};
+use super::link_drive::{LinkDrive, StretchInTurn};
 use super::refusal::MotionRefusal;
 use super::runge_kutta::{Motion, Rates, State, Step};
+use super::slider_crank::SliderCrank;
 use super::torque_law::{Shape, TorqueLaw};
 
 /// Longest stop that is calculated, counted from the stop command.
@@ -51,27 +53,72 @@ pub(super) struct Standstill {
 
 /// Travel and its slopes, known at compile time so that the inner loop has no branch on the kind of drive.
 trait Travel {
+    /// The travel as far as it is smooth.
+    type Smooth<'a>: Smooth
+    where
+        Self: 'a;
     fn travel_m(&self, angle_rad: f64) -> f64;
     fn slopes(&self, angle_rad: f64) -> (f64, f64);
+    fn smooth_from(&self, angle_rad: f64) -> Self::Smooth<'_>;
 }
 
-impl Travel for super::slider_crank::SliderCrank {
+/// A travel without corners. Where it ends, the step must end; it may be looked at a little beyond.
+trait Smooth: Copy {
+    fn slopes(&self, angle_rad: f64) -> (f64, f64);
+    fn end_rad(&self) -> f64;
+    fn next(&self) -> Self;
+}
+
+impl Travel for SliderCrank {
+    type Smooth<'a> = &'a SliderCrank;
     fn travel_m(&self, angle_rad: f64) -> f64 {
         self.travel_m(angle_rad)
     }
+    fn slopes(&self, angle_rad: f64) -> (f64, f64) {
+        self.slopes(angle_rad)
+    }
+    fn smooth_from(&self, _: f64) -> &Self {
+        self
+    }
+}
+
+impl Smooth for &SliderCrank {
+    #[inline]
+    fn slopes(&self, angle_rad: f64) -> (f64, f64) {
+        SliderCrank::slopes(self, angle_rad)
+    }
+    /// A crank has no corners.
+    fn end_rad(&self) -> f64 {
+        f64::INFINITY
+    }
+    fn next(&self) -> Self {
+        self
+    }
+}
+
+impl Travel for LinkDrive {
+    type Smooth<'a> = StretchInTurn<'a>;
+    fn travel_m(&self, angle_rad: f64) -> f64 {
+        self.travel_m(angle_rad)
+    }
+    fn slopes(&self, angle_rad: f64) -> (f64, f64) {
+        self.slopes(angle_rad)
+    }
+    fn smooth_from(&self, angle_rad: f64) -> StretchInTurn<'_> {
+        self.stretch_in_turn(angle_rad)
+    }
+}
+
+impl Smooth for StretchInTurn<'_> {
     #[inline]
     fn slopes(&self, angle_rad: f64) -> (f64, f64) {
         self.slopes(angle_rad)
     }
-}
-
-impl Travel for super::link_drive::LinkDrive {
-    fn travel_m(&self, angle_rad: f64) -> f64 {
-        self.travel_m(angle_rad)
+    fn end_rad(&self) -> f64 {
+        self.end_rad()
     }
-    #[inline]
-    fn slopes(&self, angle_rad: f64) -> (f64, f64) {
-        self.slopes(angle_rad)
+    fn next(&self) -> Self {
+        self.next()
     }
 }
 
@@ -93,17 +140,18 @@ impl<T: Travel> Crank<'_, T> {
     }
 }
 
-/// The equation of motion on one smooth stretch of the brake torque.
-struct Stretch<'a, T> {
+/// The equation of motion on one smooth stretch of travel and brake torque.
+struct Stretch<'a, T, S> {
     crank: &'a Crank<'a, T>,
+    travel: S,
     shape: Shape,
 }
 
-impl<T: Travel> Motion for Stretch<'_, T> {
+impl<T, S: Smooth> Motion for Stretch<'_, T, S> {
     #[inline]
     fn rates(&self, since_s: f64, angle_rad: f64, speed_rad_s: f64) -> Rates {
         let crank = self.crank;
-        let (first, second) = crank.travel.slopes(angle_rad);
+        let (first, second) = self.travel.slopes(angle_rad);
         let torque_nm = self.shape.torque_nm(since_s);
         let moved = crank.mass_kg * first;
         let inertia = crank.reduced_inertia_kg_m2 + moved * first;
@@ -178,9 +226,11 @@ impl Run<'_> {
         let mut steps = 0;
         // First guess: an angle over which the method is known to keep the tolerance; the error control corrects it.
         let mut length_s = FIRST_STEP * eighth_root(self.tolerance) / self.speed_rad_s;
+        let mut travel = crank.travel.smooth_from(release_angle_rad);
         for piece in self.law.pieces_after_release() {
-            let stretch = Stretch {
+            let mut stretch = Stretch {
                 crank,
+                travel,
                 shape: piece.shape,
             };
             let piece_s = piece.end_s - piece.start_s;
@@ -209,33 +259,38 @@ impl Run<'_> {
                 }
                 // A step cut short by a corner or by standstill says nothing against the longer one wanted before.
                 length_s = (trial_s * growth).max(if trial_s < length_s { length_s } else { 0.0 });
-                if let Some(bracket_s) = standstill_bracket(&stretch, since_s, &step) {
-                    let last = locate_standstill(&stretch, since_s, &step, bracket_s);
-                    errors += self.error_share(&last, energy_j);
-                    watch(piece.start_s + since_s, last.length_s, &|length_s| {
-                        Step::take(&stretch, since_s, state, rates, length_s).after
-                    });
-                    let time_s = piece.start_s + since_s + last.length_s;
-                    let brake_torque_nm = piece.shape.torque_nm(since_s + last.length_s);
+                let bracket_s = standstill_bracket(&stretch, since_s, &step);
+                let last = bracket_s.map(|s| locate_standstill(&stretch, since_s, &step, s));
+                let reached = last.as_ref().unwrap_or(&step);
+                errors += self.error_share(reached, energy_j);
+                let corner_rad = stretch.travel.end_rad();
+                let cut = (corner_rad < reached.after.angle_rad)
+                    .then(|| cut_at_angle(&stretch, since_s, reached, corner_rad));
+                let taken = cut.as_ref().unwrap_or(reached);
+                watch(piece.start_s + since_s, taken.length_s, &|length_s| {
+                    Step::take(&stretch, since_s, state, rates, length_s).after
+                });
+                if cut.is_none() && last.is_some() {
+                    let since_s = since_s + taken.length_s;
                     return self.finish(
                         crank,
                         release_angle_rad,
-                        &last,
-                        time_s,
-                        brake_torque_nm,
+                        taken,
+                        piece.start_s + since_s,
+                        piece.shape.torque_nm(since_s),
                         errors,
                     );
                 }
-                errors += share;
-                watch(piece.start_s + since_s, step.length_s, &|length_s| {
-                    Step::take(&stretch, since_s, state, rates, length_s).after
-                });
-                since_s = if reaches_corner {
+                since_s = if reaches_corner && cut.is_none() {
                     piece_s
                 } else {
-                    since_s + trial_s
+                    since_s + taken.length_s
                 };
-                state = step.after;
+                state = taken.after;
+                if cut.is_some() {
+                    travel = travel.next();
+                    stretch.travel = travel;
+                }
                 rates = stretch.rates(since_s, state.angle_rad, state.speed_rad_s);
                 self.check_limits(piece.start_s + since_s, state.angle_rad)?;
             }
@@ -382,6 +437,45 @@ fn locate_standstill(motion: &impl Motion, since_s: f64, step: &Step, bracket_s:
         }
     }
     trial.after.speed_rad_s = 0.0;
+    trial
+}
+
+/// The step that ends at a corner of the travel, which the given step passes.
+fn cut_at_angle(motion: &impl Motion, since_s: f64, step: &Step, corner_rad: f64) -> Step {
+    let (mut low, mut high) = (0.0, step.length_s);
+    let share =
+        (corner_rad - step.before.angle_rad) / (step.after.angle_rad - step.before.angle_rad);
+    let mut length_s = share * step.length_s;
+    let mut trial = *step;
+    for _ in 0..80 {
+        trial = Step::take(motion, since_s, step.before, step.first, length_s);
+        let beyond_rad = trial.after.angle_rad - corner_rad;
+        if 0.0 < beyond_rad {
+            high = length_s;
+        } else {
+            low = length_s;
+        }
+        let correction_s = -beyond_rad / trial.after.speed_rad_s;
+        if correction_s.abs() <= 1e-8 * length_s {
+            // What is left is second order: below 1e-16 of the step.
+            let end_s = since_s + trial.length_s;
+            let rates = motion.rates(end_s, trial.after.angle_rad, trial.after.speed_rad_s);
+            trial.length_s += correction_s;
+            trial.after.brake_work_j += rates.power * correction_s;
+            trial.after.speed_rad_s += rates.acceleration * correction_s;
+            break;
+        }
+        let newton = length_s + correction_s;
+        length_s = if low < newton && newton < high {
+            newton
+        } else {
+            0.5 * (low + high)
+        };
+        if high - low <= f64::EPSILON * high {
+            break;
+        }
+    }
+    trial.after.angle_rad = corner_rad;
     trial
 }
 
