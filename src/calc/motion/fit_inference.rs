@@ -118,12 +118,7 @@ impl Inference {
         // Satterthwaite: each condition's share of the variance, with the degrees of freedom of its scatter.
         let (mut total, mut squares) = (0.0, 0.0);
         for ((row, weight), degrees) in self.jacobian.iter().zip(&self.weights).zip(&self.degrees) {
-            let mut pull = 0.0;
-            for i in 0..self.unknowns {
-                for j in 0..self.unknowns {
-                    pull += gradient[i] * self.plain[i][j] * row[j];
-                }
-            }
+            let pull = bilinear(self.unknowns, gradient, &self.plain, row);
             let share = pull * pull * weight;
             total += share;
             squares += share * share / degrees;
@@ -165,10 +160,15 @@ impl Inference {
 
 /// g^T M g.
 fn quadratic(n: usize, matrix: &Square, g: &Unknown) -> f64 {
+    bilinear(n, g, matrix, g)
+}
+
+/// a^T M b.
+fn bilinear(n: usize, a: &Unknown, matrix: &Square, b: &Unknown) -> f64 {
     let mut sum = 0.0;
     for i in 0..n {
         for j in 0..n {
-            sum += g[i] * matrix[i][j] * g[j];
+            sum += a[i] * matrix[i][j] * b[j];
         }
     }
     sum

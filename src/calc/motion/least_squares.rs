@@ -145,7 +145,7 @@ pub(super) fn curvature(n: usize, jacobian: &[Unknown], weights: &[f64]) -> Squa
 pub(super) fn inverted(n: usize, matrix: &Square) -> Option<Square> {
     let mut scale = [1.0; 3];
     for i in 0..n {
-        if !(matrix[i][i] > 0.0 && matrix[i][i].is_finite()) {
+        if matrix[i][i] <= 0.0 || !matrix[i][i].is_finite() {
             return None;
         }
         scale[i] = 1.0 / matrix[i][i].sqrt();
@@ -161,7 +161,7 @@ pub(super) fn inverted(n: usize, matrix: &Square) -> Option<Square> {
     }
     for pivot in 0..n {
         let value = left[pivot][pivot];
-        if !(value > 1e-13) {
+        if value.is_nan() || value <= 1e-13 {
             return None;
         }
         for j in 0..n {

@@ -22,7 +22,7 @@ pub(super) const STOP_ANGLE_RAD_MAX: f64 = 2.0 * core::f64::consts::TAU;
 const STEPS_MAX: usize = 20_000;
 
 /// Angle of the first step on trial at a tolerance of 1; it shrinks with the eighth root of the tolerance.
-const FIRST_STEP: f64 = 4.0;
+const FIRST_STEP: f64 = 2.0;
 
 /// How far the stated error exceeds the sum of the local error estimates, for errors that grow on the way.
 const ERROR_GROWTH: f64 = 4.0;
@@ -248,12 +248,12 @@ impl Run<'_> {
                 let step = Step::take(&stretch, since_s, state, rates, trial_s);
                 let share = self.error_share(&step, energy_j);
                 let growth = if share.is_finite() {
-                    (0.9 / eighth_root(share.max(1e-10))).clamp(0.2, 6.0)
+                    (0.85 / eighth_root(share.max(1e-10))).clamp(0.2, 6.0)
                 } else {
                     0.2
                 };
-                // A comparison that NaN fails, so that a step gone astray is taken again.
-                if !(share <= 1.0) {
+                // A step gone astray is taken again, shorter.
+                if share.is_nan() || 1.0 < share {
                     length_s = trial_s * growth.min(0.9);
                     continue;
                 }
