@@ -121,7 +121,8 @@ pub fn fit_stops(request: &FitRequest) -> Result<FittedBrake, MotionRefusal> {
         rise_time_s: request.rise_time_s,
         unknowns: request.unknowns,
     };
-    let minimum = minimise(&model, &measured, &weights, first_guess(request, &weights))?;
+    let start = place_to_start(&model, first_guess(request, &weights))?;
+    let minimum = minimise(&model, &measured, &weights, start)?;
     let Minimum {
         at,
         values,
@@ -270,6 +271,21 @@ fn first_guess(request: &FitRequest, weights: &[f64]) -> Unknown {
         mean_momentum / braking_s,
         0.01 * mean_momentum / braking_s,
     ]
+}
+
+/// The first guess, with more torque if its brake would not stop or hold the drive in every condition.
+fn place_to_start(model: &BrakeModel<'_>, guess: Unknown) -> Result<Unknown, MotionRefusal> {
+    let mut start = guess;
+    for _ in 0..8 {
+        if model.values(&start).is_ok() {
+            return Ok(start);
+        }
+        start[TORQUE] *= 2.0;
+    }
+    Err(MotionRefusal::NoFit {
+        reason: "no brake near the measured times stops and holds this drive in every condition",
+        remedy: "Check masses, inertia, counterbalance and the measured times.",
+    })
 }
 
 /// The stop time of a ramp brake at every condition, as a function of the unknowns.

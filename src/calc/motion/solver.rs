@@ -18,7 +18,7 @@ pub(super) const STOP_TIME_S_MAX: f64 = 10.0;
 /// Longest way that is calculated, counted from the stop command: two turns.
 pub(super) const STOP_ANGLE_RAD_MAX: f64 = 2.0 * core::f64::consts::TAU;
 
-/// Steps on trial, accepted or not. A usual stop takes ten to thirty.
+/// Steps on trial, accepted or not. A usual stop takes five to twelve.
 const STEPS_MAX: usize = 20_000;
 
 /// Angle of the first step on trial at a tolerance of 1; it shrinks with the eighth root of the tolerance.
@@ -247,11 +247,7 @@ impl Run<'_> {
                 let trial_s = if reaches_corner { left_s } else { wanted_s };
                 let step = Step::take(&stretch, since_s, state, rates, trial_s);
                 let share = self.error_share(&step, energy_j);
-                let growth = if share.is_finite() {
-                    (0.85 / eighth_root(share.max(1e-10))).clamp(0.2, 6.0)
-                } else {
-                    0.2
-                };
+                let growth = growth_for(share);
                 // A step gone astray is taken again, shorter.
                 if share.is_nan() || 1.0 < share {
                     length_s = trial_s * growth.min(0.9);
@@ -511,6 +507,15 @@ fn first_guess(step: &Step, bracket_s: f64) -> f64 {
         }
     }
     0.5 * (low + high) * h
+}
+
+/// How much longer or shorter than this step the next may be, from its error: the error of a step grows with the eighth power of its length.
+fn growth_for(share: f64) -> f64 {
+    if share.is_finite() {
+        (0.85 / eighth_root(share.max(1e-10))).clamp(0.2, 6.0)
+    } else {
+        0.2
+    }
 }
 
 fn eighth_root(x: f64) -> f64 {

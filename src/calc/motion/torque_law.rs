@@ -115,6 +115,7 @@ impl TorqueLaw {
             pieces,
             pressure: Vec::new(),
         }
+        .in_order()
     }
 
     pub(super) fn of_pressure(data: &PressureBrakeData, path: StopPath) -> Self {
@@ -156,6 +157,29 @@ impl TorqueLaw {
             pieces,
             pressure,
         }
+        .in_order()
+    }
+
+    /// The order of events, on which the solver relies: checked brakes give no other, so anything else is a fault of this file.
+    fn in_order(self) -> Self {
+        assert!(0.0 <= self.dead_time_s && self.dead_time_s <= self.clutch_release_s);
+        assert!(
+            self.pieces
+                .first()
+                .is_some_and(|piece| piece.start_s <= 0.0)
+        );
+        assert!(
+            self.pieces
+                .last()
+                .is_some_and(|piece| piece.end_s == f64::INFINITY)
+        );
+        assert!(self.pieces.iter().all(|piece| piece.start_s < piece.end_s));
+        assert!(
+            self.pieces
+                .windows(2)
+                .all(|pair| pair[0].end_s <= pair[1].start_s)
+        );
+        self
     }
 
     /// Torque of the fully set brake, at the crank.
