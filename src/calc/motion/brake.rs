@@ -37,7 +37,9 @@ pub struct RampBrake {
 impl RampBrake {
     /// A brake whose torque is 0 until the dead time, then rises evenly to the full torque. The clutch lets go at the dead time.
     ///
-    ///     T_b(t) = T_full clamp((t - t_d)/t_r, 0, 1)
+    /// ```text
+    /// T_b(t) = T_full clamp((t - t_d)/t_r, 0, 1)
+    /// ```
     ///
     /// # Refuses
     /// [`MotionRefusal::OutOfRange`]: a negative time, a torque that is not positive, anything not a number.
@@ -129,7 +131,9 @@ pub struct PressureBrake {
 impl PressureBrake {
     /// A brake whose torque follows the falling pressure.
     ///
-    ///     T_b = T_full clamp(1 - p/p_touch, 0, 1)
+    /// ```text
+    /// T_b = T_full clamp(1 - p/p_touch, 0, 1)
+    /// ```
     ///
     /// # Refuses
     /// [`MotionRefusal::OutOfRange`] for a figure out of range; [`MotionRefusal::PressureOrder`] unless the pressures at which the clutch lets

@@ -21,7 +21,9 @@ pub struct BrakeCondition {
 impl BrakeCondition {
     /// Share of the new, cold brake's torque that is left.
     ///
-    ///     T_full / T_new = (1 - fade) F(x)/F_0,   F(x) = F_0 - c x
+    /// ```text
+    /// T_full / T_new = (1 - fade) F(x)/F_0,   F(x) = F_0 - c x
+    /// ```
     ///
     /// # Refuses
     /// [`MotionRefusal::OutOfRange`] for a figure out of range; [`MotionRefusal::SpringForceGone`] if no spring force is left.

@@ -221,7 +221,9 @@ fn width_after(rows: &[TravelRow], index: usize) -> f64 {
 ///
 /// The curvatures M solve the cyclic tridiagonal system
 ///
-///     h[i-1] M[i-1] + 2 (h[i-1] + h[i]) M[i] + h[i] M[i+1] = 6 ((y[i+1] - y[i])/h[i] - (y[i] - y[i-1])/h[i-1])
+/// ```text
+/// h[i-1] M[i-1] + 2 (h[i-1] + h[i]) M[i] + h[i] M[i+1] = 6 ((y[i+1] - y[i])/h[i] - (y[i] - y[i-1])/h[i-1])
+/// ```
 ///
 /// which is diagonally dominant. The corner elements are taken out by the Sherman-Morrison formula.
 fn periodic_spline(rows: &[TravelRow]) -> Vec<Stretch> {

@@ -48,7 +48,9 @@ impl SliderCrank {
 
     /// Slide travel below top dead centre.
     ///
-    ///     s = r (1 - cos theta) + L (1 - sqrt(1 - lambda^2 sin^2 theta)),   lambda = r/L
+    /// ```text
+    /// s = r (1 - cos theta) + L (1 - sqrt(1 - lambda^2 sin^2 theta)),   lambda = r/L
+    /// ```
     ///
     /// Written with sin^2(theta/2), so that no digits are lost near top dead centre.
     ///
@@ -67,8 +69,10 @@ impl SliderCrank {
 
     /// First and second derivative of the travel with respect to the crank angle, m/rad and m/rad^2.
     ///
-    ///     s'  = r sin (1 + lambda cos / q),                                         q = sqrt(1 - lambda^2 sin^2)
-    ///     s'' = r cos + r lambda ((cos^2 - sin^2)/q + lambda^2 sin^2 cos^2 / q^3)
+    /// ```text
+    /// s'  = r sin (1 + lambda cos / q),                                         q = sqrt(1 - lambda^2 sin^2)
+    /// s'' = r cos + r lambda ((cos^2 - sin^2)/q + lambda^2 sin^2 cos^2 / q^3)
+    /// ```
     #[must_use]
     #[inline]
     pub fn slopes(&self, angle_rad: f64) -> (f64, f64) {

@@ -1,6 +1,8 @@
 //! From clutch release to standstill: the equation of motion, stepped with error control, and the exact moment of standstill.
 //!
-//!     J dw/dt + 1/2 J' w^2 = (m g - F_cb) s' - T_f - T_b(t),   J = J_rot + m s'^2
+//! ```text
+//! J dw/dt + 1/2 J' w^2 = (m g - F_cb) s' - T_f - T_b(t),   J = J_rot + m s'^2
+//! ```
 //!
 //! Every corner of the brake torque ends a step. Standstill is found by taking the last step again with other lengths until its speed is
 //! zero: the root of the Runge-Kutta step itself, not of the interpolant, so its error is that of the step.

@@ -194,3 +194,70 @@ fn a_falling_slide_may_speed_up() {
         .fold(0.0, f64::max);
     assert!(1.01 * rad_s_from_per_min(20.0) < fastest);
 }
+
+/// A slide that all but comes to rest on its way up and then either does or is carried over top dead centre: the first root of the energy says
+/// which. The speed dips towards zero within a step or two, the place where a solver may look over a standstill.
+#[test]
+fn standstill_just_before_top_dead_centre_is_not_missed() {
+    let drive = Drive::new({
+        let mut data = drive_a_data();
+        data.counterbalance = Counterbalance::None;
+        data.friction_torque_nm = 0.0;
+        data
+    })
+    .unwrap();
+    let torque = 40.0;
+    let law = ramp(0.0, 0.0, torque).torque_law(StopPath::Normal);
+    let (mut before, mut carried_over) = (0, 0);
+    for hundredth in (4000..9000).step_by(2) {
+        let speed = f64::from(hundredth) / 100.0;
+        let command = command(250.0, speed);
+        let from = command.start_angle_rad();
+        let left = |turned: f64| {
+            0.5 * drive.inertia_kg_m2(from) * rad_s_from_per_min(speed).powi(2)
+                + drive.net_weight_n()
+                    * (drive.kinematics().travel_m(from + turned)
+                        - drive.kinematics().travel_m(from))
+                - torque * turned
+        };
+        let step = 1e-3;
+        let first = (1..3000).find(|i| left(f64::from(*i) * step) < 0.0);
+        let found = stop(&drive, &law, command, Tolerance::STANDARD);
+        if let Some(after) = first {
+            let (mut low, mut high) = (f64::from(after - 1) * step, f64::from(after) * step);
+            for _ in 0..60 {
+                let middle = 0.5 * (low + high);
+                if 0.0 < left(middle) {
+                    low = middle;
+                } else {
+                    high = middle;
+                }
+            }
+            before += 1;
+            match found {
+                Ok(found) => {
+                    assert!(torque >= drive.load_torque_nm(from + low).abs() - 0.1);
+                    assert!(
+                        (found.stop_angle_rad - low).abs() < 1e-5,
+                        "{speed}: {} {low}",
+                        found.stop_angle_rad
+                    );
+                }
+                Err(MotionRefusal::CannotHold { angle_rad, .. }) => {
+                    assert!((angle_rad - from - low).abs() < 1e-5, "{speed}");
+                }
+                Err(other) => panic!("{speed}: {other}"),
+            }
+        } else {
+            carried_over += 1;
+            // Over the top the weight drives on; 40 N m cannot stop it within three radians.
+            if let Ok(found) = found {
+                assert!(3.0 < found.stop_angle_rad, "{speed}");
+            }
+        }
+    }
+    assert!(
+        200 < before && 200 < carried_over,
+        "{before} {carried_over}"
+    );
+}
