@@ -87,4 +87,20 @@ mod tests {
         let two = 0.95 * libm::sqrt(2.0 / (1.0 - 0.95 * 0.95));
         assert!((two_sided_95(2.0) - two).abs() < 1e-12);
     }
+
+    /// Fractional degrees of freedom, by SciPy 1.17.1, `scipy.stats.t.ppf(0.975, nu)`.
+    #[test]
+    fn fractional_degrees_of_freedom() {
+        for (nu, t) in [
+            (1.3, 7.500529325562029),
+            (2.5, 3.5746548420036817),
+            (4.7, 2.62072607535317),
+            (11.25, 2.195032427275849),
+            (87.6, 1.9874163472665294),
+            (5000.5, 1.9604385042432446),
+        ] {
+            let found = two_sided_95(nu);
+            assert!((found / t - 1.0).abs() < 1e-9, "{nu}: {found}");
+        }
+    }
 }
