@@ -1,1 +1,25 @@
-//! What is kept: the plant folder on disk.
+//! What is kept: a plant folder on disk.
+//!
+//! ```text
+//! plant.ron                          what holds for the whole plant
+//! presses/<tag>.ron                  one press a file
+//! records/<tag>/<date>-<nn>.pdf      what was printed, with a sealed copy of the press beside it as .ron
+//! ```
+//!
+//! Files are RON text with a version read first. The stored shape is apart from the meaning: structs of a file version refuse
+//! unknown fields and every number outside its limit, with line, column and field, and are turned by hand into the checked
+//! types of `calc`. An unreadable file never becomes an empty press; it is listed with its error and left untouched. Saves are
+//! whole or not at all, and never over somebody else's change.
+
+mod folder;
+mod read;
+mod records;
+mod samples;
+pub mod v1;
+mod write;
+
+pub use folder::{Known, Plant, StoredPress, create, open, open_press_file, save_press, save_settings};
+pub use read::{FileRefusal, PlantRefusal};
+pub use records::{KeptRecord, SealState, keep_record, kept_records};
+pub use samples::{SAMPLES, copy_samples};
+pub use write::write_whole;

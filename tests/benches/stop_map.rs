@@ -4,9 +4,8 @@
 #![allow(missing_docs)]
 
 use calc::motion::{
-    Brake, Counterbalance, Drive, DriveData, Exhaust, GoOn, Kinematics, MapCell, MapRow,
-    PressureBrake, PressureBrakeData, RampBrake, SliderCrank, StopMap, StopPath, Tolerance,
-    rad_s_from_per_min,
+    Brake, Counterbalance, Drive, DriveData, Exhaust, GoOn, Kinematics, MapCell, MapRow, PressureBrake,
+    PressureBrakeData, RampBrake, SliderCrank, StopMap, StopPath, Tolerance, rad_s_from_per_min,
 };
 use std::time::Instant;
 
@@ -38,9 +37,7 @@ fn main() {
         })
         .expect("pressure brake"),
     );
-    let speeds: Vec<f64> = (1..=60)
-        .map(|i| rad_s_from_per_min(f64::from(2 * i)))
-        .collect();
+    let speeds: Vec<f64> = (1..=60).map(|i| rad_s_from_per_min(f64::from(2 * i))).collect();
     for (name, brake) in [("ramp brake", ramp), ("two-stage pressure brake", pressure)] {
         let map = StopMap::over_one_turn(
             drive.clone(),
@@ -72,9 +69,7 @@ fn main() {
     match std::env::var("SLIDEHALT_PYTHON") {
         Ok(python) => {
             let script = concat!(env!("CARGO_MANIFEST_DIR"), "/outside/motion/reference.py");
-            let done = std::process::Command::new(&python)
-                .args([script, "--bench"])
-                .status();
+            let done = std::process::Command::new(&python).args([script, "--bench"]).status();
             match done {
                 Ok(status) if status.success() => {}
                 Ok(status) => println!("SciPy: {python} ended with {status}"),
@@ -96,8 +91,5 @@ fn best_of(runs: u32, mut work: impl FnMut()) -> f64 {
 }
 
 fn refused(rows: &[MapRow]) -> usize {
-    rows.iter()
-        .flat_map(|row| &row.cells)
-        .filter(|cell| matches!(cell, MapCell::Refused(_)))
-        .count()
+    rows.iter().flat_map(|row| &row.cells).filter(|cell| matches!(cell, MapCell::Refused(_))).count()
 }

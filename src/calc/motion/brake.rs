@@ -43,11 +43,7 @@ impl RampBrake {
     ///
     /// # Refuses
     /// [`MotionRefusal::OutOfRange`]: a negative time, a torque that is not positive, anything not a number.
-    pub fn new(
-        dead_time_s: f64,
-        rise_time_s: f64,
-        full_torque_nm: f64,
-    ) -> Result<Self, MotionRefusal> {
+    pub fn new(dead_time_s: f64, rise_time_s: f64, full_torque_nm: f64) -> Result<Self, MotionRefusal> {
         Ok(Self {
             dead_time_s: limits::DEAD_TIME.check(dead_time_s)?,
             rise_time_s: limits::RISE_TIME.check(rise_time_s)?,
@@ -146,10 +142,7 @@ impl PressureBrake {
         let operating = limits::OPERATING_PRESSURE.check(data.operating_pressure_pa)?;
         let below_operating = |limit: &'static limits::Limit, pressure_pa: f64| {
             limit.check(pressure_pa)?;
-            in_order(
-                (limit.what, pressure_pa),
-                (limits::OPERATING_PRESSURE.what, operating),
-            )
+            in_order((limit.what, pressure_pa), (limits::OPERATING_PRESSURE.what, operating))
         };
         below_operating(&limits::CLUTCH_PRESSURE, data.clutch_release_pressure_pa)?;
         below_operating(&limits::TOUCH_PRESSURE, data.touch_pressure_pa)?;
@@ -157,20 +150,12 @@ impl PressureBrake {
             Exhaust::SingleStage { time_constant_s } => {
                 limits::TIME_CONSTANT.check(time_constant_s)?;
             }
-            Exhaust::TwoStage {
-                fast_time_constant_s,
-                metered_time_constant_s,
-                metered_from_pa,
-                metered_to_pa,
-            } => {
+            Exhaust::TwoStage { fast_time_constant_s, metered_time_constant_s, metered_from_pa, metered_to_pa } => {
                 limits::TIME_CONSTANT.check(fast_time_constant_s)?;
                 limits::TIME_CONSTANT.check(metered_time_constant_s)?;
                 below_operating(&limits::METERED_FROM, metered_from_pa)?;
                 limits::METERED_TO.check(metered_to_pa)?;
-                in_order(
-                    (limits::METERED_TO.what, metered_to_pa),
-                    (limits::METERED_FROM.what, metered_from_pa),
-                )?;
+                in_order((limits::METERED_TO.what, metered_to_pa), (limits::METERED_FROM.what, metered_from_pa))?;
             }
         }
         limits::TIME_CONSTANT.check(data.emergency_time_constant_s)?;
@@ -188,10 +173,7 @@ impl PressureBrake {
     /// # Refuses
     /// As [`PressureBrake::new`].
     pub fn with_operating_pressure(&self, pressure_pa: f64) -> Result<Self, MotionRefusal> {
-        Self::new(PressureBrakeData {
-            operating_pressure_pa: pressure_pa,
-            ..self.data
-        })
+        Self::new(PressureBrakeData { operating_pressure_pa: pressure_pa, ..self.data })
     }
 
     /// The same brake with the valve needle of the metered stage set to another time constant.
@@ -204,20 +186,17 @@ impl PressureBrake {
                 wanted: "another setting of the metered stage",
                 present: "a single-stage brake",
             }),
-            Exhaust::TwoStage {
-                fast_time_constant_s,
-                metered_from_pa,
-                metered_to_pa,
-                ..
-            } => Self::new(PressureBrakeData {
-                exhaust: Exhaust::TwoStage {
-                    fast_time_constant_s,
-                    metered_time_constant_s: time_constant_s,
-                    metered_from_pa,
-                    metered_to_pa,
-                },
-                ..self.data
-            }),
+            Exhaust::TwoStage { fast_time_constant_s, metered_from_pa, metered_to_pa, .. } => {
+                Self::new(PressureBrakeData {
+                    exhaust: Exhaust::TwoStage {
+                        fast_time_constant_s,
+                        metered_time_constant_s: time_constant_s,
+                        metered_from_pa,
+                        metered_to_pa,
+                    },
+                    ..self.data
+                })
+            }
         }
     }
 
@@ -234,16 +213,7 @@ fn in_order(
     (lower, lower_pa): (&'static str, f64),
     (higher, higher_pa): (&'static str, f64),
 ) -> Result<(), MotionRefusal> {
-    if lower_pa < higher_pa {
-        Ok(())
-    } else {
-        Err(MotionRefusal::PressureOrder {
-            lower,
-            lower_pa,
-            higher,
-            higher_pa,
-        })
-    }
+    if lower_pa < higher_pa { Ok(()) } else { Err(MotionRefusal::PressureOrder { lower, lower_pa, higher, higher_pa }) }
 }
 
 /// A brake of either kind.

@@ -51,18 +51,12 @@ impl BrakeParts {
 ///
 /// # Refuses
 /// [`MotionRefusal::OutOfRange`] for a radius out of range, [`MotionRefusal::RadiusOrder`] for an inner radius not below the outer.
-pub fn mean_radius_m(
-    outer_radius_m: f64,
-    inner_radius_m: f64,
-    spread: MeanRadius,
-) -> Result<f64, MotionRefusal> {
+pub fn mean_radius_m(outer_radius_m: f64, inner_radius_m: f64, spread: MeanRadius) -> Result<f64, MotionRefusal> {
     let (outer, inner) = check_radii(outer_radius_m, inner_radius_m)?;
     Ok(match spread {
         MeanRadius::UniformWear => 0.5 * (outer + inner),
         // The common factor (r_o - r_i) is divided out, so that a narrow ring loses no digits.
-        MeanRadius::UniformPressure => {
-            2.0 / 3.0 * (outer * outer + outer * inner + inner * inner) / (outer + inner)
-        }
+        MeanRadius::UniformPressure => 2.0 / 3.0 * (outer * outer + outer * inner + inner * inner) / (outer + inner),
     })
 }
 

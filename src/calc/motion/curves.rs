@@ -74,13 +74,7 @@ pub fn stop_curves(
             while points.len() < intervals && moment_s(points.len()) <= start_s + length_s {
                 let time_s = moment_s(points.len());
                 let state = state_after(time_s - start_s);
-                points.push(point(
-                    drive,
-                    law,
-                    time_s,
-                    state.angle_rad,
-                    state.speed_rad_s,
-                ));
+                points.push(point(drive, law, time_s, state.angle_rad, state.speed_rad_s));
             }
         },
     )?;

@@ -85,10 +85,7 @@ impl Counterbalance {
         match *self {
             Self::None => 0.0,
             Self::Force { force_n } => force_n,
-            Self::Cylinders {
-                pressure_pa,
-                area_m2,
-            } => pressure_pa * area_m2,
+            Self::Cylinders { pressure_pa, area_m2 } => pressure_pa * area_m2,
         }
     }
 
@@ -98,10 +95,7 @@ impl Counterbalance {
             Self::Force { force_n } => {
                 limits::COUNTERBALANCE_FORCE.check(force_n)?;
             }
-            Self::Cylinders {
-                pressure_pa,
-                area_m2,
-            } => {
+            Self::Cylinders { pressure_pa, area_m2 } => {
                 limits::COUNTERBALANCE_PRESSURE.check(pressure_pa)?;
                 limits::COUNTERBALANCE_AREA.check(area_m2)?;
             }
@@ -170,10 +164,7 @@ impl Drive {
         data.counterbalance.check()?;
         limits::FRICTION_TORQUE.check(data.friction_torque_nm)?;
         let moved_mass_kg = data.slide_mass_kg + data.upper_die_mass_kg;
-        Ok(Self {
-            data,
-            moved_mass_kg,
-        })
+        Ok(Self { data, moved_mass_kg })
     }
 
     /// The same drive with another upper die.
@@ -181,10 +172,7 @@ impl Drive {
     /// # Refuses
     /// [`MotionRefusal::OutOfRange`] for a negative mass or one that is not a number.
     pub fn with_upper_die_mass(&self, upper_die_mass_kg: f64) -> Result<Self, MotionRefusal> {
-        Self::checked(DriveData {
-            upper_die_mass_kg,
-            ..self.data.clone()
-        })
+        Self::checked(DriveData { upper_die_mass_kg, ..self.data.clone() })
     }
 
     /// The same drive with another running friction.
@@ -192,24 +180,15 @@ impl Drive {
     /// # Refuses
     /// [`MotionRefusal::OutOfRange`] for a negative torque or one that is not a number.
     pub fn with_friction_torque(&self, friction_torque_nm: f64) -> Result<Self, MotionRefusal> {
-        Self::checked(DriveData {
-            friction_torque_nm,
-            ..self.data.clone()
-        })
+        Self::checked(DriveData { friction_torque_nm, ..self.data.clone() })
     }
 
     /// The same drive with another counterbalance.
     ///
     /// # Refuses
     /// [`MotionRefusal::OutOfRange`] for a negative figure or one that is not a number.
-    pub fn with_counterbalance(
-        &self,
-        counterbalance: Counterbalance,
-    ) -> Result<Self, MotionRefusal> {
-        Self::checked(DriveData {
-            counterbalance,
-            ..self.data.clone()
-        })
+    pub fn with_counterbalance(&self, counterbalance: Counterbalance) -> Result<Self, MotionRefusal> {
+        Self::checked(DriveData { counterbalance, ..self.data.clone() })
     }
 
     /// The figures as given.

@@ -108,35 +108,21 @@ pub fn fit_stops(request: &FitRequest) -> Result<FittedBrake, MotionRefusal> {
     check(request)?;
     let conditions = &request.conditions;
     let measured: Vec<f64> = conditions.iter().map(|c| c.mean_stop_time_s).collect();
-    let weights: Vec<f64> = conditions
-        .iter()
-        .map(|c| f64::from(c.stops) / (c.standard_deviation_s * c.standard_deviation_s))
-        .collect();
-    let degrees: Vec<f64> = conditions
-        .iter()
-        .map(|c| f64::from(c.stops) - 1.0)
-        .collect();
-    let model = BrakeModel {
-        conditions,
-        rise_time_s: request.rise_time_s,
-        unknowns: request.unknowns,
-    };
+    let weights: Vec<f64> =
+        conditions.iter().map(|c| f64::from(c.stops) / (c.standard_deviation_s * c.standard_deviation_s)).collect();
+    let degrees: Vec<f64> = conditions.iter().map(|c| f64::from(c.stops) - 1.0).collect();
+    let model = BrakeModel { conditions, rise_time_s: request.rise_time_s, unknowns: request.unknowns };
     let start = place_to_start(&model, first_guess(request, &weights))?;
     let minimum = minimise(&model, &measured, &weights, start)?;
-    let Minimum {
-        at,
-        values,
-        jacobian,
-        chi_squared,
-    } = minimum;
+    let Minimum { at, values, jacobian, chi_squared } = minimum;
     let separate = |one: usize, other: usize| MotionRefusal::CannotSeparate {
         one: NAMES[one],
         other: NAMES[other],
         suggested_rad_s: suggested_speed(conditions),
     };
     let n = model.unknowns();
-    let inference = Inference::new(n, jacobian, weights.clone(), degrees.clone(), chi_squared)
-        .ok_or(separate(n - 2, n - 1))?;
+    let inference =
+        Inference::new(n, jacobian, weights.clone(), degrees.clone(), chi_squared).ok_or(separate(n - 2, n - 1))?;
     check_separate(&inference, &at, n, &measured, separate)?;
     let scatter_degrees: f64 = degrees.iter().sum();
     let scatter = conditions
@@ -190,10 +176,7 @@ fn check(request: &FitRequest) -> Result<(), MotionRefusal> {
         });
     }
     if request.conditions.len() < needed {
-        return Err(MotionRefusal::TooFewConditions {
-            given: request.conditions.len(),
-            needed,
-        });
+        return Err(MotionRefusal::TooFewConditions { given: request.conditions.len(), needed });
     }
     Ok(())
 }
@@ -227,9 +210,7 @@ fn speed_range(conditions: &[FitCondition]) -> (f64, f64) {
     conditions
         .iter()
         .map(|c| c.command.speed_rad_s())
-        .fold((f64::INFINITY, 0.0), |(least, greatest), speed| {
-            (least.min(speed), greatest.max(speed))
-        })
+        .fold((f64::INFINITY, 0.0), |(least, greatest), speed| (least.min(speed), greatest.max(speed)))
 }
 
 /// Half the slowest speed tested: slow stops show the delay, and no press is asked to run faster than it has.
@@ -246,31 +227,18 @@ fn first_guess(request: &FitRequest, weights: &[f64]) -> Unknown {
         .map(|c| c.drive.inertia_kg_m2(c.command.start_angle_rad()) * c.command.speed_rad_s())
         .collect();
     let total: f64 = weights.iter().sum();
-    let mean = |of: &dyn Fn(usize) -> f64| {
-        (0..weights.len()).map(|k| weights[k] * of(k)).sum::<f64>() / total
-    };
+    let mean = |of: &dyn Fn(usize) -> f64| (0..weights.len()).map(|k| weights[k] * of(k)).sum::<f64>() / total;
     let time = |k: usize| conditions[k].mean_stop_time_s;
     let (mean_momentum, mean_time) = (mean(&|k| momentum[k]), mean(&time));
     let spread = mean(&|k| (momentum[k] - mean_momentum) * (momentum[k] - mean_momentum));
     let slope = mean(&|k| (momentum[k] - mean_momentum) * (time(k) - mean_time)) / spread;
-    let shortest = conditions
-        .iter()
-        .map(|c| c.mean_stop_time_s)
-        .fold(f64::INFINITY, f64::min);
+    let shortest = conditions.iter().map(|c| c.mean_stop_time_s).fold(f64::INFINITY, f64::min);
     let half_rise_s = 0.5 * request.rise_time_s;
     let line_delay_s = mean_time - slope * mean_momentum - half_rise_s;
     // A line that makes no sense, because of scatter or a short stop, gives way to a share of the shortest stop.
-    let delay_s = if 0.0 < line_delay_s && line_delay_s < 0.9 * shortest {
-        line_delay_s
-    } else {
-        0.3 * shortest
-    };
+    let delay_s = if 0.0 < line_delay_s && line_delay_s < 0.9 * shortest { line_delay_s } else { 0.3 * shortest };
     let braking_s = (mean_time - delay_s - half_rise_s).max(0.2 * mean_time);
-    [
-        delay_s,
-        mean_momentum / braking_s,
-        0.01 * mean_momentum / braking_s,
-    ]
+    [delay_s, mean_momentum / braking_s, 0.01 * mean_momentum / braking_s]
 }
 
 /// The first guess, with more torque if its brake would not stop or hold the drive in every condition.
@@ -304,17 +272,11 @@ impl Model for BrakeModel<'_> {
     }
 
     fn values(&self, at: &Unknown) -> Result<Vec<f64>, MotionRefusal> {
-        self.conditions
-            .iter()
-            .map(|c| stop_time(&c.drive, c.command, self.rise_time_s, self.unknowns, at))
-            .collect()
+        self.conditions.iter().map(|c| stop_time(&c.drive, c.command, self.rise_time_s, self.unknowns, at)).collect()
     }
 
     fn jacobian(&self, at: &Unknown) -> Result<Vec<Unknown>, MotionRefusal> {
-        self.conditions
-            .iter()
-            .map(|c| gradient(&c.drive, c.command, self.rise_time_s, self.unknowns, at))
-            .collect()
+        self.conditions.iter().map(|c| gradient(&c.drive, c.command, self.rise_time_s, self.unknowns, at)).collect()
     }
 }
 
@@ -335,8 +297,7 @@ fn solve(
     unknowns: Unknowns,
     at: &Unknown,
 ) -> Result<Stop, MotionRefusal> {
-    let law = Brake::Ramp(RampBrake::new(at[DELAY], rise_time_s, at[TORQUE])?)
-        .torque_law(StopPath::Normal);
+    let law = Brake::Ramp(RampBrake::new(at[DELAY], rise_time_s, at[TORQUE])?).torque_law(StopPath::Normal);
     match unknowns {
         Unknowns::DelayAndTorque => stop(drive, &law, command, Tolerance::FINE),
         Unknowns::DelayTorqueAndFriction => {
@@ -356,11 +317,7 @@ fn gradient(
     at: &Unknown,
 ) -> Result<Unknown, MotionRefusal> {
     let mut gradient = [0.0; 3];
-    let steps = [
-        1e-4 * at[DELAY].max(1e-3),
-        1e-4 * at[TORQUE],
-        1e-4 * at[TORQUE],
-    ];
+    let steps = [1e-4 * at[DELAY].max(1e-3), 1e-4 * at[TORQUE], 1e-4 * at[TORQUE]];
     let time = |at: &Unknown| stop_time(drive, command, rise_time_s, unknowns, at);
     let count = match unknowns {
         Unknowns::DelayAndTorque => 2,
@@ -393,29 +350,18 @@ impl FittedBrake {
     ///
     /// # Refuses
     /// [`MotionRefusal::OutOfRange`] for no stops; otherwise as [`super::stop()`].
-    pub fn predict(
-        &self,
-        drive: &Drive,
-        command: StopCommand,
-        stops: u32,
-    ) -> Result<StopPrediction, MotionRefusal> {
+    pub fn predict(&self, drive: &Drive, command: StopCommand, stops: u32) -> Result<StopPrediction, MotionRefusal> {
         let count = limits::PREDICTED_STOPS.check(f64::from(stops))?;
         let at = [
             self.dead_time_s.value,
             self.full_torque_nm.value,
-            self.friction_torque_nm
-                .map_or(0.0, |friction| friction.value),
+            self.friction_torque_nm.map_or(0.0, |friction| friction.value),
         ];
         let rise_time_s = self.brake.rise_time_s();
         let stop = solve(drive, command, rise_time_s, self.unknowns, &at)?;
         let gradient = gradient(drive, command, rise_time_s, self.unknowns, &at)?;
         let (scatter, degrees) = self.scatter;
-        let half_width = self
-            .inference
-            .prediction_half_width(&gradient, (scatter / count, degrees));
-        Ok(StopPrediction {
-            stop,
-            stop_time_s: Estimate::around(stop.stop_time_s, half_width),
-        })
+        let half_width = self.inference.prediction_half_width(&gradient, (scatter / count, degrees));
+        Ok(StopPrediction { stop, stop_time_s: Estimate::around(stop.stop_time_s, half_width) })
     }
 }

@@ -6,10 +6,15 @@
 //! Biometrics Bulletin 2 (1946) 110-114), and the limit of the lack-of-fit test is raised (G. S. James, Biometrika 38 (1951) 324-329).
 
 use super::least_squares::{Square, Unknown, curvature, inverted};
-use super::student_t::two_sided_95;
+use crate::statistics::student_t_upper_quantile;
 
 /// Upper 1 % point of the standard normal distribution.
 const NORMAL_99: f64 = 2.326_347_874_040_841;
+
+/// The t that lies outside (-t, t) with probability 5 %; the degrees of freedom need not be whole.
+fn two_sided_95(degrees_of_freedom: f64) -> f64 {
+    student_t_upper_quantile(0.025, degrees_of_freedom)
+}
 
 /// A fitted figure with its 95 % interval.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -24,11 +29,7 @@ pub struct Estimate {
 
 impl Estimate {
     pub(super) fn around(value: f64, half_width: f64) -> Self {
-        Self {
-            value,
-            low: value - half_width,
-            high: value + half_width,
-        }
+        Self { value, low: value - half_width, high: value + half_width }
     }
 }
 
@@ -57,15 +58,11 @@ impl Inference {
         chi_squared: f64,
     ) -> Option<Self> {
         let plain = inverted(unknowns, &curvature(unknowns, &jacobian, &weights))?;
-        let leverage: Vec<f64> = jacobian
-            .iter()
-            .zip(&weights)
-            .map(|(row, weight)| weight * quadratic(unknowns, &plain, row))
-            .collect();
+        let leverage: Vec<f64> =
+            jacobian.iter().zip(&weights).map(|(row, weight)| weight * quadratic(unknowns, &plain, row)).collect();
         // Kackar and Harville: V + 2 V [sum (2/nu) w (1 - h) x x^T] V.
-        let widening: Vec<f64> = (0..weights.len())
-            .map(|k| 2.0 / degrees[k] * weights[k] * (1.0 - leverage[k]).max(0.0))
-            .collect();
+        let widening: Vec<f64> =
+            (0..weights.len()).map(|k| 2.0 / degrees[k] * weights[k] * (1.0 - leverage[k]).max(0.0)).collect();
         let middle = curvature(unknowns, &jacobian, &widening);
         let mut covariance = plain;
         for (i, row) in covariance.iter_mut().enumerate().take(unknowns) {
@@ -83,13 +80,8 @@ impl Inference {
             // Wilson and Hilferty's approximation to the upper 1 % point of chi squared.
             let root = 1.0 - 2.0 / (9.0 * q) + NORMAL_99 * (2.0 / (9.0 * q)).sqrt();
             let point = q * root * root * root;
-            let uncertain: f64 = leverage
-                .iter()
-                .zip(&degrees)
-                .map(|(h, nu)| (1.0 - h) * (1.0 - h) / nu)
-                .sum();
-            point * (1.0 + (3.0 * point + q + 2.0) / (2.0 * q * (q + 2.0)) * uncertain)
-                < chi_squared
+            let uncertain: f64 = leverage.iter().zip(&degrees).map(|(h, nu)| (1.0 - h) * (1.0 - h) / nu).sum();
+            point * (1.0 + (3.0 * point + q + 2.0) / (2.0 * q * (q + 2.0)) * uncertain) < chi_squared
         };
         if lack_of_fit {
             // The scatter of the stops no longer explains the residuals: they themselves are the better yardstick.
@@ -98,15 +90,7 @@ impl Inference {
                 *element *= factor;
             }
         }
-        Some(Self {
-            unknowns,
-            covariance,
-            plain,
-            jacobian,
-            weights,
-            degrees,
-            lack_of_fit,
-        })
+        Some(Self { unknowns, covariance, plain, jacobian, weights, degrees, lack_of_fit })
     }
 
     /// Variance of the combination g . unknowns, and its degrees of freedom.
@@ -123,11 +107,7 @@ impl Inference {
             total += share;
             squares += share * share / degrees;
         }
-        let degrees = if squares > 0.0 {
-            total * total / squares
-        } else {
-            self.degrees.iter().sum()
-        };
+        let degrees = if squares > 0.0 { total * total / squares } else { self.degrees.iter().sum() };
         (variance, degrees.max(1.0))
     }
 
@@ -140,15 +120,10 @@ impl Inference {
     }
 
     /// Half width of the 95 % prediction interval: the uncertainty of the fit and the scatter of what is predicted.
-    pub(super) fn prediction_half_width(
-        &self,
-        gradient: &Unknown,
-        (scatter, scatter_degrees): (f64, f64),
-    ) -> f64 {
+    pub(super) fn prediction_half_width(&self, gradient: &Unknown, (scatter, scatter_degrees): (f64, f64)) -> f64 {
         let (fit, fit_degrees) = self.variance(gradient);
         let total = fit + scatter;
-        let degrees =
-            total * total / (fit * fit / fit_degrees + scatter * scatter / scatter_degrees);
+        let degrees = total * total / (fit * fit / fit_degrees + scatter * scatter / scatter_degrees);
         two_sided_95(degrees.max(1.0)) * total.sqrt()
     }
 
@@ -172,4 +147,25 @@ fn bilinear(n: usize, a: &Unknown, matrix: &Square, b: &Unknown) -> f64 {
         }
     }
     sum
+}
+
+#[cfg(test)]
+mod tests {
+    use super::two_sided_95;
+
+    /// Fractional degrees of freedom, by SciPy 1.17.1, `scipy.stats.t.ppf(0.975, nu)`.
+    #[test]
+    fn fractional_degrees_of_freedom() {
+        for (nu, t) in [
+            (1.3, 7.500529325562029),
+            (2.5, 3.5746548420036817),
+            (4.7, 2.62072607535317),
+            (11.25, 2.195032427275849),
+            (87.6, 1.9874163472665294),
+            (5000.5, 1.9604385042432446),
+        ] {
+            let found = two_sided_95(nu);
+            assert!((found / t - 1.0).abs() < 1e-9, "{nu}: {found}");
+        }
+    }
 }

@@ -75,21 +75,14 @@ pub(super) fn minimise(
             (values, chi_squared)
         });
         match trial {
-            Some((next_values, next_chi_squared))
-                if next_chi_squared <= chi_squared || (settled && damping < 1.0) =>
-            {
+            Some((next_values, next_chi_squared)) if next_chi_squared <= chi_squared || (settled && damping < 1.0) => {
                 at = next;
                 values = next_values;
                 chi_squared = next_chi_squared;
                 jacobian = model.jacobian(&at)?;
                 damping = (0.1 * damping).max(1e-12);
                 if settled && damping < 1.0 {
-                    return Ok(Minimum {
-                        at,
-                        values,
-                        jacobian,
-                        chi_squared,
-                    });
+                    return Ok(Minimum { at, values, jacobian, chi_squared });
                 }
             }
             _ if 1e12 < damping => break,

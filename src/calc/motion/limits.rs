@@ -29,14 +29,7 @@ impl Limit {
         (shown_unit, shown_per_si): (&'static str, f64),
         remedy: &'static str,
     ) -> Self {
-        Self {
-            what,
-            least,
-            greatest,
-            shown_unit,
-            shown_per_si,
-            remedy,
-        }
+        Self { what, least, greatest, shown_unit, shown_per_si, remedy }
     }
 
     /// The figure itself if it is permitted.

@@ -94,11 +94,7 @@ impl LinkDrive {
         let stretches = periodic_spline(rows);
         let (bottom_dead_centre_rad, stroke_m) = check_one_way(&stretches)?;
         limits::STROKE.check(stroke_m)?;
-        Ok(Self {
-            stretches,
-            bottom_dead_centre_rad,
-            stroke_m,
-        })
+        Ok(Self { stretches, bottom_dead_centre_rad, stroke_m })
     }
 
     /// Crank angle of the greatest travel.
@@ -132,34 +128,20 @@ impl LinkDrive {
     /// The stretch at an angle.
     pub(super) fn stretch_in_turn(&self, angle_rad: f64) -> StretchInTurn<'_> {
         let turns = TAU * (angle_rad * (1.0 / TAU)).floor();
-        let after = self
-            .stretches
-            .partition_point(|stretch| stretch.start_rad <= angle_rad - turns);
+        let after = self.stretches.partition_point(|stretch| stretch.start_rad <= angle_rad - turns);
         let index = after.max(1) - 1;
         self.stretch_from(index, turns + self.stretches[index].start_rad)
     }
 
     fn stretch_from(&self, index: usize, start_rad: f64) -> StretchInTurn<'_> {
-        let Stretch {
-            width_rad,
-            coefficients,
-            ..
-        } = self.stretches[index];
-        StretchInTurn {
-            link: self,
-            index,
-            coefficients,
-            start_rad,
-            end_rad: start_rad + width_rad,
-        }
+        let Stretch { width_rad, coefficients, .. } = self.stretches[index];
+        StretchInTurn { link: self, index, coefficients, start_rad, end_rad: start_rad + width_rad }
     }
 
     #[inline]
     fn at(&self, angle_rad: f64) -> (&Stretch, f64) {
         let within = angle_rad - TAU * (angle_rad * (1.0 / TAU)).floor();
-        let after = self
-            .stretches
-            .partition_point(|stretch| stretch.start_rad <= within);
+        let after = self.stretches.partition_point(|stretch| stretch.start_rad <= within);
         let stretch = &self.stretches[after.max(1) - 1];
         (stretch, within - stretch.start_rad)
     }
@@ -167,11 +149,7 @@ impl LinkDrive {
 
 fn check_rows(rows: &[TravelRow]) -> Result<(), MotionRefusal> {
     if rows.len() < ROWS_LEAST || ROWS_MOST < rows.len() {
-        return Err(MotionRefusal::TableRows {
-            given: rows.len(),
-            least: ROWS_LEAST,
-            greatest: ROWS_MOST,
-        });
+        return Err(MotionRefusal::TableRows { given: rows.len(), least: ROWS_LEAST, greatest: ROWS_MOST });
     }
     for row in rows {
         limits::TABLE_ANGLE.check(row.angle_rad)?;
@@ -179,34 +157,21 @@ fn check_rows(rows: &[TravelRow]) -> Result<(), MotionRefusal> {
     }
     let first = rows[0];
     if first.angle_rad != 0.0 || first.travel_m != 0.0 {
-        return Err(MotionRefusal::TableStart {
-            angle_rad: first.angle_rad,
-            travel_m: first.travel_m,
-        });
+        return Err(MotionRefusal::TableStart { angle_rad: first.angle_rad, travel_m: first.travel_m });
     }
     for (index, pair) in rows.windows(2).enumerate() {
         if pair[1].angle_rad <= pair[0].angle_rad {
-            return Err(MotionRefusal::TableOrder {
-                row: index + 2,
-                angle_rad: pair[1].angle_rad,
-            });
+            return Err(MotionRefusal::TableOrder { row: index + 2, angle_rad: pair[1].angle_rad });
         }
     }
     let last = rows[rows.len() - 1];
     if TAU <= last.angle_rad {
-        return Err(MotionRefusal::TableOrder {
-            row: rows.len(),
-            angle_rad: last.angle_rad,
-        });
+        return Err(MotionRefusal::TableOrder { row: rows.len(), angle_rad: last.angle_rad });
     }
     for (index, row) in rows.iter().enumerate() {
         let width_rad = width_after(rows, index);
         if GAP_RAD_MAX < width_rad {
-            return Err(MotionRefusal::TableGap {
-                angle_rad: row.angle_rad,
-                width_rad,
-                width_rad_max: GAP_RAD_MAX,
-            });
+            return Err(MotionRefusal::TableGap { angle_rad: row.angle_rad, width_rad, width_rad_max: GAP_RAD_MAX });
         }
     }
     Ok(())
@@ -230,19 +195,13 @@ fn periodic_spline(rows: &[TravelRow]) -> Vec<Stretch> {
     let n = rows.len();
     let width: Vec<f64> = (0..n).map(|i| width_after(rows, i)).collect();
     let travel = |i: usize| rows[i % n].travel_m;
-    let chord: Vec<f64> = (0..n)
-        .map(|i| (travel(i + 1) - travel(i)) / width[i])
-        .collect();
+    let chord: Vec<f64> = (0..n).map(|i| (travel(i + 1) - travel(i)) / width[i]).collect();
     let before = |i: usize| (i + n - 1) % n;
-    let right: Vec<f64> = (0..n)
-        .map(|i| 6.0 * (chord[i] - chord[before(i)]))
-        .collect();
+    let right: Vec<f64> = (0..n).map(|i| 6.0 * (chord[i] - chord[before(i)])).collect();
 
     let corner = width[n - 1];
     let gamma = -2.0 * (width[n - 1] + width[0]);
-    let mut diagonal: Vec<f64> = (0..n)
-        .map(|i| 2.0 * (width[before(i)] + width[i]))
-        .collect();
+    let mut diagonal: Vec<f64> = (0..n).map(|i| 2.0 * (width[before(i)] + width[i])).collect();
     diagonal[0] -= gamma;
     diagonal[n - 1] -= corner * corner / gamma;
     let mut bend = vec![0.0; n];
@@ -298,15 +257,8 @@ fn check_one_way(stretches: &[Stretch]) -> Result<(f64, f64), MotionRefusal> {
     }
     let by_travel = |a: &&(f64, f64), b: &&(f64, f64)| a.1.total_cmp(&b.1);
     // Neither can fail: a table has at least 24 rows.
-    let (Some(&top), Some(&bottom)) = (
-        places.iter().min_by(by_travel),
-        places.iter().max_by(by_travel),
-    ) else {
-        return Err(MotionRefusal::TableRows {
-            given: stretches.len(),
-            least: ROWS_LEAST,
-            greatest: ROWS_MOST,
-        });
+    let (Some(&top), Some(&bottom)) = (places.iter().min_by(by_travel), places.iter().max_by(by_travel)) else {
+        return Err(MotionRefusal::TableRows { given: stretches.len(), least: ROWS_LEAST, greatest: ROWS_MOST });
     };
     let stroke_m = bottom.1 - top.1;
     let allowed_m = TURN_BACK_SHARE * stroke_m;
@@ -322,11 +274,7 @@ fn check_one_way(stretches: &[Stretch]) -> Result<(f64, f64), MotionRefusal> {
         }
         let back_m = furthest - progress;
         if allowed_m < back_m {
-            return Err(MotionRefusal::TableTurnsBack {
-                angle_rad,
-                back_m,
-                allowed_m,
-            });
+            return Err(MotionRefusal::TableTurnsBack { angle_rad, back_m, allowed_m });
         }
         if down && (angle_rad, travel_m) == bottom {
             down = false;
@@ -346,10 +294,7 @@ fn turning_points(stretch: &Stretch) -> Vec<f64> {
     }
     // The form that does not subtract nearly equal figures; a or q may be 0, the quotient is then not finite and is left out.
     let q = -0.5 * (b + discriminant.sqrt().copysign(b));
-    let mut found: Vec<f64> = [q / a, c / q]
-        .into_iter()
-        .filter(|x| 0.0 < *x && *x < stretch.width_rad)
-        .collect();
+    let mut found: Vec<f64> = [q / a, c / q].into_iter().filter(|x| 0.0 < *x && *x < stretch.width_rad).collect();
     found.sort_by(f64::total_cmp);
     found
 }
@@ -363,10 +308,7 @@ mod tests {
         (0..rows)
             .map(|i| {
                 let angle_rad = TAU * i as f64 / rows as f64;
-                TravelRow {
-                    angle_rad,
-                    travel_m: crank.travel_m(angle_rad),
-                }
+                TravelRow { angle_rad, travel_m: crank.travel_m(angle_rad) }
             })
             .collect()
     }
@@ -418,29 +360,11 @@ mod tests {
             change(&mut rows);
             LinkDrive::new(&rows).unwrap_err()
         };
-        assert!(matches!(
-            refusal(&|rows| rows.truncate(20)),
-            MotionRefusal::TableRows { given: 20, .. }
-        ));
-        assert!(matches!(
-            refusal(&|rows| rows[0].travel_m = 0.001),
-            MotionRefusal::TableStart { .. }
-        ));
-        assert!(matches!(
-            refusal(&|rows| rows.swap(4, 5)),
-            MotionRefusal::TableOrder { row: 6, .. }
-        ));
-        assert!(matches!(
-            refusal(&|rows| drop(rows.drain(30..34))),
-            MotionRefusal::TableGap { .. }
-        ));
-        assert!(matches!(
-            refusal(&|rows| rows[9].travel_m = 0.02),
-            MotionRefusal::TableTurnsBack { .. }
-        ));
-        assert!(matches!(
-            refusal(&|rows| rows[9].travel_m = f64::NAN),
-            MotionRefusal::OutOfRange { .. }
-        ));
+        assert!(matches!(refusal(&|rows| rows.truncate(20)), MotionRefusal::TableRows { given: 20, .. }));
+        assert!(matches!(refusal(&|rows| rows[0].travel_m = 0.001), MotionRefusal::TableStart { .. }));
+        assert!(matches!(refusal(&|rows| rows.swap(4, 5)), MotionRefusal::TableOrder { row: 6, .. }));
+        assert!(matches!(refusal(&|rows| drop(rows.drain(30..34))), MotionRefusal::TableGap { .. }));
+        assert!(matches!(refusal(&|rows| rows[9].travel_m = 0.02), MotionRefusal::TableTurnsBack { .. }));
+        assert!(matches!(refusal(&|rows| rows[9].travel_m = f64::NAN), MotionRefusal::OutOfRange { .. }));
     }
 }

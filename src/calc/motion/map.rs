@@ -113,31 +113,15 @@ impl StopMap {
         tolerance: Tolerance,
     ) -> Result<Self, MotionRefusal> {
         let size = |what: &'static str, given: usize, greatest: usize| {
-            if 1 <= given && given <= greatest {
-                Ok(())
-            } else {
-                Err(MotionRefusal::MapSize {
-                    what,
-                    given,
-                    greatest,
-                })
-            }
+            if 1 <= given && given <= greatest { Ok(()) } else { Err(MotionRefusal::MapSize { what, given, greatest }) }
         };
         size("start angles", angle_count, limits::MAP_ANGLES_MAX)?;
         size("speeds", speeds_rad_s.len(), limits::MAP_SPEEDS_MAX)?;
         for speed_rad_s in &speeds_rad_s {
             limits::SPEED.check(*speed_rad_s)?;
         }
-        let start_angles_rad = (0..angle_count)
-            .map(|index| TAU * index as f64 / angle_count as f64)
-            .collect();
-        Ok(Self {
-            drive,
-            law,
-            start_angles_rad,
-            speeds_rad_s,
-            tolerance,
-        })
+        let start_angles_rad = (0..angle_count).map(|index| TAU * index as f64 / angle_count as f64).collect();
+        Ok(Self { drive, law, start_angles_rad, speeds_rad_s, tolerance })
     }
 
     /// Number of rows: one for each start angle.
@@ -161,25 +145,15 @@ impl StopMap {
         rows: Range<usize>,
         mut progress: impl FnMut(usize) -> GoOn,
     ) -> Result<Vec<MapRow>, MotionRefusal> {
-        let angles = self
-            .start_angles_rad
-            .get(rows.clone())
-            .ok_or(MotionRefusal::MapSize {
-                what: "rows",
-                given: rows.end,
-                greatest: self.row_count(),
-            })?;
+        let angles = self.start_angles_rad.get(rows.clone()).ok_or(MotionRefusal::MapSize {
+            what: "rows",
+            given: rows.end,
+            greatest: self.row_count(),
+        })?;
         let mut done = Vec::with_capacity(angles.len());
         for &start_angle_rad in angles {
-            let cells = self
-                .speeds_rad_s
-                .iter()
-                .map(|&speed_rad_s| self.cell(start_angle_rad, speed_rad_s))
-                .collect();
-            done.push(MapRow {
-                start_angle_rad,
-                cells,
-            });
+            let cells = self.speeds_rad_s.iter().map(|&speed_rad_s| self.cell(start_angle_rad, speed_rad_s)).collect();
+            done.push(MapRow { start_angle_rad, cells });
             if progress(done.len()) == GoOn::Stop {
                 return Err(MotionRefusal::Stopped);
             }
@@ -207,21 +181,16 @@ impl StopMap {
     pub fn worst(&self, rows: &[MapRow], range: AngleRange) -> Result<WorstCell, MotionRefusal> {
         let (from_rad, to_rad) = match range {
             AngleRange::ClosingHalf => (0.0, self.drive.kinematics().bottom_dead_centre_rad()),
-            AngleRange::Marked { from_rad, to_rad } => (
-                limits::START_ANGLE.check(from_rad)?,
-                limits::START_ANGLE.check(to_rad)?,
-            ),
+            AngleRange::Marked { from_rad, to_rad } => {
+                (limits::START_ANGLE.check(from_rad)?, limits::START_ANGLE.check(to_rad)?)
+            }
         };
         // An angle of a degree step, worked out twice, may differ in its last digits.
         let slack = 1e-12;
         let is_inside = |angle: f64| {
             let after_start = from_rad - slack <= angle;
             let before_end = angle <= to_rad + slack;
-            if from_rad <= to_rad {
-                after_start && before_end
-            } else {
-                after_start || before_end
-            }
+            if from_rad <= to_rad { after_start && before_end } else { after_start || before_end }
         };
         let mut longest: Option<WorstStop> = None;
         for row in rows.iter().filter(|row| is_inside(row.start_angle_rad)) {
@@ -229,17 +198,9 @@ impl StopMap {
             for (&speed_rad_s, cell) in self.speeds_rad_s.iter().zip(&row.cells) {
                 match *cell {
                     MapCell::Refused(refusal) => {
-                        return Ok(WorstCell::Refused {
-                            start_angle_rad,
-                            speed_rad_s,
-                            refusal,
-                        });
+                        return Ok(WorstCell::Refused { start_angle_rad, speed_rad_s, refusal });
                     }
-                    MapCell::Stop {
-                        stop_time_s,
-                        stop_angle_rad,
-                        slide_travel_m,
-                    } => {
+                    MapCell::Stop { stop_time_s, stop_angle_rad, slide_travel_m } => {
                         if longest.is_none_or(|worst| worst.stop_time_s < stop_time_s) {
                             longest = Some(WorstStop {
                                 start_angle_rad,
@@ -253,8 +214,6 @@ impl StopMap {
                 }
             }
         }
-        longest
-            .map(WorstCell::Longest)
-            .ok_or(MotionRefusal::NothingInRange)
+        longest.map(WorstCell::Longest).ok_or(MotionRefusal::NothingInRange)
     }
 }

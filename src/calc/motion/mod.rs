@@ -26,25 +26,20 @@ mod runge_kutta;
 mod slider_crank;
 mod solver;
 mod stop;
-mod student_t;
 mod torque_law;
 mod what_if;
 
 pub use brake::{
-    Brake, CLUTCH_RELEASE_PRESSURE_PA_ASSUMED, ENGAGED_PRESSURE_PA_TYPICAL, Exhaust,
-    METERED_FROM_PRESSURE_PA_TYPICAL, PressureBrake, PressureBrakeData, RampBrake, StopPath,
-    TOUCH_PRESSURE_PA_TYPICAL,
+    Brake, CLUTCH_RELEASE_PRESSURE_PA_ASSUMED, ENGAGED_PRESSURE_PA_TYPICAL, Exhaust, METERED_FROM_PRESSURE_PA_TYPICAL,
+    PressureBrake, PressureBrakeData, RampBrake, StopPath, TOUCH_PRESSURE_PA_TYPICAL,
 };
 pub use brake_by_parts::{BrakeParts, MeanRadius, mean_radius_m, spring_force_n};
 pub use brake_condition::BrakeCondition;
 pub use curves::{CurvePoint, StopCurves, stop_curves};
 pub use drive::{
-    Counterbalance, Drive, DriveData, Kinematics, STANDARD_GRAVITY_M_S2, rad_from_deg,
-    rad_s_from_per_min,
+    Counterbalance, Drive, DriveData, Kinematics, STANDARD_GRAVITY_M_S2, rad_from_deg, rad_s_from_per_min,
 };
-pub use fit::{
-    FitCondition, FitRequest, FittedBrake, FittedCondition, StopPrediction, Unknowns, fit_stops,
-};
+pub use fit::{FitCondition, FitRequest, FittedBrake, FittedCondition, StopPrediction, Unknowns, fit_stops};
 pub use fit_inference::Estimate;
 pub use limits::Limit;
 pub use link_drive::{LinkDrive, ROWS_LEAST, ROWS_MOST, TravelRow};

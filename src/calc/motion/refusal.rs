@@ -178,11 +178,7 @@ struct Shown(f64);
 impl fmt::Display for Shown {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         if !self.0.is_finite() {
-            return f.write_str(if self.0.is_nan() {
-                "not a number"
-            } else {
-                "infinite"
-            });
+            return f.write_str(if self.0.is_nan() { "not a number" } else { "infinite" });
         }
         let rounded: f64 = format!("{:.5e}", self.0).parse().map_err(|_| fmt::Error)?;
         if rounded == 0.0 || (1e-4 <= rounded.abs() && rounded.abs() < 1e9) {

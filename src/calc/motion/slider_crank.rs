@@ -22,16 +22,9 @@ impl SliderCrank {
         let crank_radius_m = 0.5 * limits::STROKE.check(stroke_m)?;
         limits::ROD.check(rod_m)?;
         if rod_m <= crank_radius_m {
-            return Err(MotionRefusal::RodTooShort {
-                rod_m,
-                crank_radius_m,
-            });
+            return Err(MotionRefusal::RodTooShort { rod_m, crank_radius_m });
         }
-        Ok(Self {
-            crank_radius_m,
-            rod_m,
-            lambda: crank_radius_m / rod_m,
-        })
+        Ok(Self { crank_radius_m, rod_m, lambda: crank_radius_m / rod_m })
     }
 
     /// Stroke: twice the crank radius.
@@ -63,8 +56,7 @@ impl SliderCrank {
         let lambda_sin_squared = self.lambda * self.lambda * sin * sin;
         // A square root is correctly rounded on every machine, so the built-in one serves.
         let root = (1.0 - lambda_sin_squared).sqrt();
-        2.0 * self.crank_radius_m * half_sin * half_sin
-            + self.rod_m * lambda_sin_squared / (1.0 + root)
+        2.0 * self.crank_radius_m * half_sin * half_sin + self.rod_m * lambda_sin_squared / (1.0 + root)
     }
 
     /// First and second derivative of the travel with respect to the crank angle, m/rad and m/rad^2.
@@ -86,8 +78,7 @@ impl SliderCrank {
         let first = self.crank_radius_m * sin * (1.0 + lambda_cos_q);
         let lambda_sin_q = lambda_sin * q_inverse;
         let second = self.crank_radius_m
-            * (cos * (1.0 + lambda_cos_q + lambda_cos_q * lambda_sin_q * lambda_sin_q)
-                - sin * lambda_sin_q);
+            * (cos * (1.0 + lambda_cos_q + lambda_cos_q * lambda_sin_q * lambda_sin_q) - sin * lambda_sin_q);
         (first, second)
     }
 }
@@ -116,10 +107,7 @@ mod tests {
 
     #[test]
     fn no_rod_shorter_than_the_crank() {
-        assert!(matches!(
-            SliderCrank::new(0.15, 0.075),
-            Err(MotionRefusal::RodTooShort { .. })
-        ));
+        assert!(matches!(SliderCrank::new(0.15, 0.075), Err(MotionRefusal::RodTooShort { .. })));
         for bad in [0.0, -0.1, f64::NAN, f64::INFINITY] {
             assert!(SliderCrank::new(bad, 0.6).is_err());
             assert!(SliderCrank::new(0.15, bad).is_err());

@@ -136,9 +136,7 @@ struct Crank<'a, T> {
 impl<T: Travel> Crank<'_, T> {
     fn kinetic_energy_j(&self, angle_rad: f64, speed_rad_s: f64) -> f64 {
         let (first, _) = self.travel.slopes(angle_rad);
-        0.5 * (self.reduced_inertia_kg_m2 + self.mass_kg * first * first)
-            * speed_rad_s
-            * speed_rad_s
+        0.5 * (self.reduced_inertia_kg_m2 + self.mass_kg * first * first) * speed_rad_s * speed_rad_s
     }
 }
 
@@ -161,11 +159,7 @@ impl<T, S: Smooth> Motion for Stretch<'_, T, S> {
             - crank.friction_torque_nm
             - torque_nm
             - moved * second * speed_rad_s * speed_rad_s;
-        Rates {
-            speed: speed_rad_s,
-            acceleration: drive_on / inertia,
-            power: torque_nm * speed_rad_s,
-        }
+        Rates { speed: speed_rad_s, acceleration: drive_on / inertia, power: torque_nm * speed_rad_s }
     }
 }
 
@@ -178,12 +172,7 @@ pub(super) fn run_to_standstill(
     tolerance: f64,
     watch: impl FnMut(f64, f64, &dyn Fn(f64) -> State),
 ) -> Result<Standstill, MotionRefusal> {
-    let run = Run {
-        law,
-        start_angle_rad,
-        speed_rad_s,
-        tolerance,
-    };
+    let run = Run { law, start_angle_rad, speed_rad_s, tolerance };
     match drive.kinematics() {
         Kinematics::SliderCrank(travel) => run.solve(&crank_of(drive, travel), watch),
         Kinematics::LinkDrive(travel) => run.solve(&crank_of(drive, travel), watch),
@@ -217,11 +206,7 @@ impl Run<'_> {
         let release_s = self.law.clutch_release_s();
         let release_angle_rad = self.start_angle_rad + self.speed_rad_s * release_s;
         self.check_limits(release_s, release_angle_rad)?;
-        let mut state = State {
-            angle_rad: release_angle_rad,
-            speed_rad_s: self.speed_rad_s,
-            brake_work_j: 0.0,
-        };
+        let mut state = State { angle_rad: release_angle_rad, speed_rad_s: self.speed_rad_s, brake_work_j: 0.0 };
         let energy_j = crank.kinetic_energy_j(release_angle_rad, self.speed_rad_s);
         // Sum of the estimated local errors, in units of the tolerance.
         let mut errors = 0.0;
@@ -230,11 +215,7 @@ impl Run<'_> {
         let mut length_s = FIRST_STEP * eighth_root(self.tolerance) / self.speed_rad_s;
         let mut travel = crank.travel.smooth_from(release_angle_rad);
         for piece in self.law.pieces_after_release() {
-            let mut stretch = Stretch {
-                crank,
-                travel,
-                shape: piece.shape,
-            };
+            let mut stretch = Stretch { crank, travel, shape: piece.shape };
             let piece_s = piece.end_s - piece.start_s;
             let mut since_s = 0.0;
             let mut rates = stretch.rates(0.0, state.angle_rad, state.speed_rad_s);
@@ -279,11 +260,7 @@ impl Run<'_> {
                         errors,
                     );
                 }
-                since_s = if reaches_corner && cut.is_none() {
-                    piece_s
-                } else {
-                    since_s + taken.length_s
-                };
+                since_s = if reaches_corner && cut.is_none() { piece_s } else { since_s + taken.length_s };
                 state = taken.after;
                 if cut.is_some() {
                     travel = travel.next();
@@ -294,28 +271,21 @@ impl Run<'_> {
             }
         }
         // The last piece of a torque law never ends, so the loop above always returns; a law that did end has no standstill.
-        Err(MotionRefusal::NoStandstillInTime {
-            limit_s: STOP_TIME_S_MAX,
-        })
+        Err(MotionRefusal::NoStandstillInTime { limit_s: STOP_TIME_S_MAX })
     }
 
     /// Estimated local error as a share of what the tolerance allows. The brake's work is held to the tolerance too.
     fn error_share(&self, step: &Step, energy_j: f64) -> f64 {
         let speed = self.tolerance * self.speed_rad_s;
-        ESTIMATE_CAUTION
-            * step.error_share([speed * step.length_s, speed, self.tolerance * energy_j])
+        ESTIMATE_CAUTION * step.error_share([speed * step.length_s, speed, self.tolerance * energy_j])
     }
 
     fn check_limits(&self, time_s: f64, angle_rad: f64) -> Result<(), MotionRefusal> {
         if STOP_TIME_S_MAX < time_s {
-            return Err(MotionRefusal::NoStandstillInTime {
-                limit_s: STOP_TIME_S_MAX,
-            });
+            return Err(MotionRefusal::NoStandstillInTime { limit_s: STOP_TIME_S_MAX });
         }
         if STOP_ANGLE_RAD_MAX < angle_rad - self.start_angle_rad {
-            return Err(MotionRefusal::NoStandstillInAngle {
-                limit_rad: STOP_ANGLE_RAD_MAX,
-            });
+            return Err(MotionRefusal::NoStandstillInAngle { limit_rad: STOP_ANGLE_RAD_MAX });
         }
         Ok(())
     }
@@ -340,33 +310,21 @@ impl Run<'_> {
             kinetic_energy_j: crank.kinetic_energy_j(release_angle_rad, self.speed_rad_s),
             gravity_work_j: crank.net_weight_n * way_m,
             friction_work_j: crank.friction_torque_nm * (angle_rad - release_angle_rad),
-            time_error_s: ERROR_GROWTH * errors * self.tolerance * self.speed_rad_s
-                / last.end_acceleration.abs()
+            time_error_s: ERROR_GROWTH * errors * self.tolerance * self.speed_rad_s / last.end_acceleration.abs()
                 + 16.0 * f64::EPSILON * time_s,
         };
-        let turned_over =
-            found.kinetic_energy_j + found.gravity_work_j.abs() + found.friction_work_j;
-        let missing = found.kinetic_energy_j + found.gravity_work_j
-            - found.friction_work_j
-            - found.brake_work_j;
+        let turned_over = found.kinetic_energy_j + found.gravity_work_j.abs() + found.friction_work_j;
+        let missing = found.kinetic_energy_j + found.gravity_work_j - found.friction_work_j - found.brake_work_j;
         let share = missing.abs() / turned_over;
         let share_max = ENERGY_SHARE_PER_TOLERANCE * self.tolerance + ENERGY_SHARE_ROUNDING;
-        if share <= share_max {
-            Ok(found)
-        } else {
-            Err(MotionRefusal::EnergyNotBalanced { share, share_max })
-        }
+        if share <= share_max { Ok(found) } else { Err(MotionRefusal::EnergyNotBalanced { share, share_max }) }
     }
 }
 
 /// Steps reach a little past the standstill foreseen: a standstill inside the step is found, one just beyond it would cost another step.
 fn until_just_after_standstill(state: &State, rates: &Rates, length_s: f64) -> f64 {
     let foreseen_s = -1.2 * state.speed_rad_s / rates.acceleration;
-    if 0.0 < foreseen_s && foreseen_s < length_s {
-        foreseen_s
-    } else {
-        length_s
-    }
+    if 0.0 < foreseen_s && foreseen_s < length_s { foreseen_s } else { length_s }
 }
 
 /// Length of a step, at most this one's, whose end has no speed left; none if the crank turns all the way.
@@ -425,11 +383,7 @@ fn locate_standstill(motion: &impl Motion, since_s: f64, step: &Step, bracket_s:
             return trial;
         }
         let newton = length_s + correction_s;
-        length_s = if low < newton && newton < high {
-            newton
-        } else {
-            0.5 * (low + high)
-        };
+        length_s = if low < newton && newton < high { newton } else { 0.5 * (low + high) };
         if high - low <= f64::EPSILON * high {
             break;
         }
@@ -441,8 +395,7 @@ fn locate_standstill(motion: &impl Motion, since_s: f64, step: &Step, bracket_s:
 /// The step that ends at a corner of the travel, which the given step passes.
 fn cut_at_angle(motion: &impl Motion, since_s: f64, step: &Step, corner_rad: f64) -> Step {
     let (mut low, mut high) = (0.0, step.length_s);
-    let share =
-        (corner_rad - step.before.angle_rad) / (step.after.angle_rad - step.before.angle_rad);
+    let share = (corner_rad - step.before.angle_rad) / (step.after.angle_rad - step.before.angle_rad);
     let mut length_s = share * step.length_s;
     let mut trial = *step;
     for _ in 0..80 {
@@ -464,11 +417,7 @@ fn cut_at_angle(motion: &impl Motion, since_s: f64, step: &Step, corner_rad: f64
             break;
         }
         let newton = length_s + correction_s;
-        length_s = if low < newton && newton < high {
-            newton
-        } else {
-            0.5 * (low + high)
-        };
+        length_s = if low < newton && newton < high { newton } else { 0.5 * (low + high) };
         if high - low <= f64::EPSILON * high {
             break;
         }
@@ -513,11 +462,7 @@ fn first_guess(step: &Step, bracket_s: f64) -> f64 {
 
 /// How much longer or shorter than this step the next may be, from its error: the error of a step grows with the eighth power of its length.
 fn growth_for(share: f64) -> f64 {
-    if share.is_finite() {
-        (0.85 / eighth_root(share.max(1e-10))).clamp(0.2, 6.0)
-    } else {
-        0.2
-    }
+    if share.is_finite() { (0.85 / eighth_root(share.max(1e-10))).clamp(0.2, 6.0) } else { 0.2 }
 }
 
 fn eighth_root(x: f64) -> f64 {

@@ -96,8 +96,7 @@ impl EnergyBalance {
     #[must_use]
     pub fn missing_share(&self) -> f64 {
         let turned_over = self.kinetic_energy_j + self.gravity_work_j.abs() + self.friction_work_j;
-        (self.kinetic_energy_j + self.gravity_work_j - self.brake_work_j - self.friction_work_j)
-            / turned_over
+        (self.kinetic_energy_j + self.gravity_work_j - self.brake_work_j - self.friction_work_j) / turned_over
     }
 }
 
@@ -146,20 +145,8 @@ impl Stop {
 ///
 /// # Source
 /// Handbook mechanics: slider-crank kinematics, inertia reduced to the crank, Coulomb friction.
-pub fn stop(
-    drive: &Drive,
-    law: &TorqueLaw,
-    command: StopCommand,
-    tolerance: Tolerance,
-) -> Result<Stop, MotionRefusal> {
-    let found = run_to_standstill(
-        drive,
-        law,
-        command.start_angle_rad,
-        command.speed_rad_s,
-        tolerance.0,
-        |_, _, _| {},
-    )?;
+pub fn stop(drive: &Drive, law: &TorqueLaw, command: StopCommand, tolerance: Tolerance) -> Result<Stop, MotionRefusal> {
+    let found = run_to_standstill(drive, law, command.start_angle_rad, command.speed_rad_s, tolerance.0, |_, _, _| {})?;
     stop_from(drive, law, command, &found)
 }
 
@@ -188,8 +175,7 @@ pub(super) fn stop_from(
     Ok(Stop {
         stop_time_s: end_s,
         stop_angle_rad: found.angle_rad - command.start_angle_rad,
-        slide_travel_m: kinematics.travel_m(found.angle_rad)
-            - kinematics.travel_m(command.start_angle_rad),
+        slide_travel_m: kinematics.travel_m(found.angle_rad) - kinematics.travel_m(command.start_angle_rad),
         stop_time_error_s: found.time_error_s,
         spans: StopSpans {
             delay_s: delay_end_s,

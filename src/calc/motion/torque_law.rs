@@ -13,41 +13,27 @@ pub(super) enum Shape {
     /// Torque = at start + slope x since.
     Even { start_nm: f64, slope_nm_s: f64 },
     /// Torque = full - missing at start x e^(-rate x since).
-    Relaxing {
-        full_nm: f64,
-        missing_nm: f64,
-        rate_per_s: f64,
-    },
+    Relaxing { full_nm: f64, missing_nm: f64, rate_per_s: f64 },
 }
 
 impl Shape {
     #[inline]
     pub(super) fn torque_nm(&self, since_s: f64) -> f64 {
         match *self {
-            Self::Even {
-                start_nm,
-                slope_nm_s,
-            } => start_nm + slope_nm_s * since_s,
-            Self::Relaxing {
-                full_nm,
-                missing_nm,
-                rate_per_s,
-            } => full_nm - missing_nm * libm::exp(-rate_per_s * since_s),
+            Self::Even { start_nm, slope_nm_s } => start_nm + slope_nm_s * since_s,
+            Self::Relaxing { full_nm, missing_nm, rate_per_s } => {
+                full_nm - missing_nm * libm::exp(-rate_per_s * since_s)
+            }
         }
     }
 
     /// Integral of the torque from the start of the piece.
     fn impulse_nm_s(&self, since_s: f64) -> f64 {
         match *self {
-            Self::Even {
-                start_nm,
-                slope_nm_s,
-            } => since_s * (start_nm + 0.5 * slope_nm_s * since_s),
-            Self::Relaxing {
-                full_nm,
-                missing_nm,
-                rate_per_s,
-            } => full_nm * since_s + missing_nm / rate_per_s * libm::expm1(-rate_per_s * since_s),
+            Self::Even { start_nm, slope_nm_s } => since_s * (start_nm + 0.5 * slope_nm_s * since_s),
+            Self::Relaxing { full_nm, missing_nm, rate_per_s } => {
+                full_nm * since_s + missing_nm / rate_per_s * libm::expm1(-rate_per_s * since_s)
+            }
         }
     }
 }
@@ -85,45 +71,26 @@ impl TorqueLaw {
         let (dead_time_s, rise_time_s) = (brake.dead_time_s(), brake.rise_time_s());
         let full_torque_nm = brake.full_torque_nm();
         let built_up_s = dead_time_s + rise_time_s;
-        let even = |start_nm, slope_nm_s| Shape::Even {
-            start_nm,
-            slope_nm_s,
-        };
+        let even = |start_nm, slope_nm_s| Shape::Even { start_nm, slope_nm_s };
         let pieces = [
             (0.0, dead_time_s, even(0.0, 0.0)),
-            (
-                dead_time_s,
-                built_up_s,
-                even(0.0, full_torque_nm / rise_time_s),
-            ),
+            (dead_time_s, built_up_s, even(0.0, full_torque_nm / rise_time_s)),
             (built_up_s, f64::INFINITY, even(full_torque_nm, 0.0)),
         ]
         .into_iter()
         // Without dead time or rise time the piece has no length; its slope is then never used.
         .filter(|(start_s, end_s, _)| start_s < end_s)
-        .map(|(start_s, end_s, shape)| Piece {
-            start_s,
-            end_s,
-            shape,
-        })
+        .map(|(start_s, end_s, shape)| Piece { start_s, end_s, shape })
         .collect();
-        Self {
-            full_torque_nm,
-            dead_time_s,
-            clutch_release_s: dead_time_s,
-            built_up_s,
-            pieces,
-            pressure: Vec::new(),
-        }
-        .in_order()
+        Self { full_torque_nm, dead_time_s, clutch_release_s: dead_time_s, built_up_s, pieces, pressure: Vec::new() }
+            .in_order()
     }
 
     pub(super) fn of_pressure(data: &PressureBrakeData, path: StopPath) -> Self {
         let pressure = pressure_pieces(data, path);
         let clutch_release_s = time_at_pressure(&pressure, data.clutch_release_pressure_pa);
         let touch_s = time_at_pressure(&pressure, data.touch_pressure_pa);
-        let built_up_s =
-            time_at_pressure(&pressure, BUILT_UP_MISSING_SHARE * data.touch_pressure_pa);
+        let built_up_s = time_at_pressure(&pressure, BUILT_UP_MISSING_SHARE * data.touch_pressure_pa);
         let mut corners: Vec<f64> = pressure.iter().map(|piece| piece.start_s).collect();
         corners.extend([0.0, clutch_release_s, touch_s]);
         corners.sort_by(f64::total_cmp);
@@ -135,10 +102,7 @@ impl TorqueLaw {
                 start_s,
                 end_s: corners.get(index + 1).copied().unwrap_or(f64::INFINITY),
                 shape: if start_s < touch_s {
-                    Shape::Even {
-                        start_nm: 0.0,
-                        slope_nm_s: 0.0,
-                    }
+                    Shape::Even { start_nm: 0.0, slope_nm_s: 0.0 }
                 } else {
                     let (pressure_pa, time_constant_s) = pressure_at(&pressure, start_s);
                     Shape::Relaxing {
@@ -163,22 +127,10 @@ impl TorqueLaw {
     /// The order of events, on which the solver relies: checked brakes give no other, so anything else is a fault of this file.
     fn in_order(self) -> Self {
         assert!(0.0 <= self.dead_time_s && self.dead_time_s <= self.clutch_release_s);
-        assert!(
-            self.pieces
-                .first()
-                .is_some_and(|piece| piece.start_s <= 0.0)
-        );
-        assert!(
-            self.pieces
-                .last()
-                .is_some_and(|piece| piece.end_s == f64::INFINITY)
-        );
+        assert!(self.pieces.first().is_some_and(|piece| piece.start_s <= 0.0));
+        assert!(self.pieces.last().is_some_and(|piece| piece.end_s == f64::INFINITY));
         assert!(self.pieces.iter().all(|piece| piece.start_s < piece.end_s));
-        assert!(
-            self.pieces
-                .windows(2)
-                .all(|pair| pair[0].end_s <= pair[1].start_s)
-        );
+        assert!(self.pieces.windows(2).all(|pair| pair[0].end_s <= pair[1].start_s));
         self
     }
 
@@ -252,11 +204,7 @@ fn pressure_pieces(data: &PressureBrakeData, path: StopPath) -> Vec<PressurePiec
     let mut start_s = data.dead_time_s;
     let mut fall = |from_pa: f64, to_pa: f64, time_constant_s: f64| {
         if start_s.is_finite() {
-            pieces.push(PressurePiece {
-                start_s,
-                start_pa: from_pa,
-                time_constant_s,
-            });
+            pieces.push(PressurePiece { start_s, start_pa: from_pa, time_constant_s });
         }
         // A fall to zero takes for ever: the logarithm is then infinite and no piece follows.
         start_s += time_constant_s * libm::log(from_pa / to_pa);
@@ -269,12 +217,7 @@ fn pressure_pieces(data: &PressureBrakeData, path: StopPath) -> Vec<PressurePiec
         }
         (
             StopPath::Normal,
-            Exhaust::TwoStage {
-                fast_time_constant_s,
-                metered_time_constant_s,
-                metered_from_pa,
-                metered_to_pa,
-            },
+            Exhaust::TwoStage { fast_time_constant_s, metered_time_constant_s, metered_from_pa, metered_to_pa },
         ) => {
             fall(operating, metered_from_pa, fast_time_constant_s);
             fall(metered_from_pa, metered_to_pa, metered_time_constant_s);

@@ -75,32 +75,26 @@ impl StopSetup {
                 changed.command = StopCommand::new(self.command.start_angle_rad(), speed_rad_s)?;
             }
             Change::CounterbalancePressure { pressure_pa } => {
-                let Counterbalance::Cylinders { area_m2, .. } = self.drive.data().counterbalance
-                else {
+                let Counterbalance::Cylinders { area_m2, .. } = self.drive.data().counterbalance else {
                     return Err(MotionRefusal::NoSuchPart {
                         wanted: "another counterbalance pressure",
                         present: "no counterbalance given by pressure and piston area",
                     });
                 };
-                changed.drive = self.drive.with_counterbalance(Counterbalance::Cylinders {
-                    pressure_pa,
-                    area_m2,
-                })?;
+                changed.drive = self.drive.with_counterbalance(Counterbalance::Cylinders { pressure_pa, area_m2 })?;
             }
             Change::Condition(condition) => {
                 changed.brake = self.brake.with_condition(&condition)?;
             }
             Change::OperatingPressure { pressure_pa } => {
-                changed.brake = self
-                    .change_pressure_brake("another operating pressure", |brake| {
-                        brake.with_operating_pressure(pressure_pa)
-                    })?;
+                changed.brake = self.change_pressure_brake("another operating pressure", |brake| {
+                    brake.with_operating_pressure(pressure_pa)
+                })?;
             }
             Change::MeteredTimeConstant { time_constant_s } => {
-                changed.brake = self
-                    .change_pressure_brake("another setting of the metered stage", |brake| {
-                        brake.with_metered_time_constant(time_constant_s)
-                    })?;
+                changed.brake = self.change_pressure_brake("another setting of the metered stage", |brake| {
+                    brake.with_metered_time_constant(time_constant_s)
+                })?;
             }
         }
         Ok(changed)
@@ -109,16 +103,13 @@ impl StopSetup {
     fn change_pressure_brake(
         &self,
         wanted: &'static str,
-        change: impl FnOnce(
-            &super::brake::PressureBrake,
-        ) -> Result<super::brake::PressureBrake, MotionRefusal>,
+        change: impl FnOnce(&super::brake::PressureBrake) -> Result<super::brake::PressureBrake, MotionRefusal>,
     ) -> Result<Brake, MotionRefusal> {
         match &self.brake {
             Brake::Pressure(brake) => change(brake).map(Brake::Pressure),
-            Brake::Ramp(_) => Err(MotionRefusal::NoSuchPart {
-                wanted,
-                present: "a brake known by its times, not by its pressures",
-            }),
+            Brake::Ramp(_) => {
+                Err(MotionRefusal::NoSuchPart { wanted, present: "a brake known by its times, not by its pressures" })
+            }
         }
     }
 
@@ -127,12 +118,7 @@ impl StopSetup {
     /// # Refuses
     /// As [`super::stop()`].
     pub fn stop(&self, tolerance: Tolerance) -> Result<Stop, MotionRefusal> {
-        stop(
-            &self.drive,
-            &self.brake.torque_law(self.path),
-            self.command,
-            tolerance,
-        )
+        stop(&self.drive, &self.brake.torque_law(self.path), self.command, tolerance)
     }
 }
 
@@ -140,17 +126,10 @@ impl StopSetup {
 ///
 /// # Refuses
 /// If the setup or the changed setup is refused.
-pub fn what_if(
-    setup: &StopSetup,
-    changes: &[Change],
-    tolerance: Tolerance,
-) -> Result<WhatIf, MotionRefusal> {
+pub fn what_if(setup: &StopSetup, changes: &[Change], tolerance: Tolerance) -> Result<WhatIf, MotionRefusal> {
     let mut changed = setup.clone();
     for change in changes {
         changed = changed.with(change)?;
     }
-    Ok(WhatIf {
-        before: setup.stop(tolerance)?,
-        after: changed.stop(tolerance)?,
-    })
+    Ok(WhatIf { before: setup.stop(tolerance)?, after: changed.stop(tolerance)? })
 }

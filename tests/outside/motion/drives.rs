@@ -1,8 +1,8 @@
 //! Drives and brakes that several checks share.
 
 use calc::motion::{
-    Brake, Counterbalance, Drive, DriveData, Exhaust, Kinematics, PressureBrake, PressureBrakeData,
-    RampBrake, SliderCrank, StopCommand, rad_from_deg, rad_s_from_per_min,
+    Brake, Counterbalance, Drive, DriveData, Exhaust, Kinematics, PressureBrake, PressureBrakeData, RampBrake,
+    SliderCrank, StopCommand, rad_from_deg, rad_s_from_per_min,
 };
 
 /// Drive A: r 75 mm, L 600 mm, m 900 kg, J_rot 22 kg m2, F_cb 8000 N, T_f 60 N m.

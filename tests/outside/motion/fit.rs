@@ -2,8 +2,7 @@
 
 use super::drives::{command, drive_a, ramp};
 use calc::motion::{
-    Brake, FitCondition, FitRequest, MotionRefusal, RampBrake, StopPath, Tolerance, Unknowns,
-    fit_stops, stop,
+    Brake, FitCondition, FitRequest, MotionRefusal, RampBrake, StopPath, Tolerance, Unknowns, fit_stops, stop,
 };
 
 const DEAD_S: f64 = 0.045;
@@ -31,14 +30,7 @@ impl Chance {
 fn true_time(start_deg: f64, speed_per_min: f64, die_kg: f64) -> f64 {
     let drive = drive_a().with_upper_die_mass(die_kg).unwrap();
     let law = ramp(DEAD_S, RISE_S, FULL_NM).torque_law(StopPath::Normal);
-    stop(
-        &drive,
-        &law,
-        command(start_deg, speed_per_min),
-        Tolerance::STANDARD,
-    )
-    .unwrap()
-    .stop_time_s
+    stop(&drive, &law, command(start_deg, speed_per_min), Tolerance::STANDARD).unwrap().stop_time_s
 }
 
 /// A condition with its mean and standard deviation.
@@ -58,11 +50,7 @@ fn condition(
 }
 
 fn request(conditions: Vec<FitCondition>, unknowns: Unknowns) -> FitRequest {
-    FitRequest {
-        conditions,
-        rise_time_s: RISE_S,
-        unknowns,
-    }
+    FitRequest { conditions, rise_time_s: RISE_S, unknowns }
 }
 
 const PLACES: [(f64, f64, f64); 6] = [
@@ -77,10 +65,7 @@ const PLACES: [(f64, f64, f64); 6] = [
 #[test]
 fn exact_stops_give_the_figures_back() {
     let exact = |places: &[(f64, f64, f64)]| -> Vec<FitCondition> {
-        places
-            .iter()
-            .map(|p| condition(*p, true_time(p.0, p.1, p.2), 0.001, 10))
-            .collect()
+        places.iter().map(|p| condition(*p, true_time(p.0, p.1, p.2), 0.001, 10)).collect()
     };
     for count in [2, 6] {
         let found = fit_stops(&request(exact(&PLACES[..count]), Unknowns::DelayAndTorque)).unwrap();
@@ -93,10 +78,7 @@ fn exact_stops_give_the_figures_back() {
     // Friction apart from brake torque shows only in stops that end while the brake builds up, so very slow ones are among these.
     let mut places = PLACES.to_vec();
     places.extend([(90.0, 3.0, 0.0), (90.0, 6.0, 0.0), (90.0, 100.0, 0.0)]);
-    let tight: Vec<FitCondition> = places
-        .iter()
-        .map(|p| condition(*p, true_time(p.0, p.1, p.2), 0.0001, 30))
-        .collect();
+    let tight: Vec<FitCondition> = places.iter().map(|p| condition(*p, true_time(p.0, p.1, p.2), 0.0001, 30)).collect();
     let found = fit_stops(&request(tight, Unknowns::DelayTorqueAndFriction)).unwrap();
     assert!((found.dead_time_s.value - DEAD_S).abs() < 1e-6);
     assert!((found.full_torque_nm.value - FULL_NM).abs() < 0.05);
@@ -128,9 +110,8 @@ fn intervals_are_right_as_often_as_they_claim() {
             })
             .collect();
         let found = fit_stops(&request(conditions, Unknowns::DelayAndTorque)).unwrap();
-        let holds = |estimate: calc::motion::Estimate, truth: f64| {
-            u32::from(estimate.low <= truth && truth <= estimate.high)
-        };
+        let holds =
+            |estimate: calc::motion::Estimate, truth: f64| u32::from(estimate.low <= truth && truth <= estimate.high);
         delay += holds(found.dead_time_s, DEAD_S);
         torque += holds(found.full_torque_nm, FULL_NM);
         delay_sum += found.dead_time_s.value;
@@ -139,21 +120,11 @@ fn intervals_are_right_as_often_as_they_claim() {
         let prediction = found.predict(&new_drive, command(new.0, new.1), 1).unwrap();
         predicted += holds(prediction.stop_time_s, new_time + scatter * chance.normal());
     }
-    println!(
-        "delay {delay}, torque {torque}, prediction {predicted} of 1000; lack of fit {lacking}"
-    );
-    for (what, count) in [
-        ("delay", delay),
-        ("torque", torque),
-        ("prediction", predicted),
-    ] {
+    println!("delay {delay}, torque {torque}, prediction {predicted} of 1000; lack of fit {lacking}");
+    for (what, count) in [("delay", delay), ("torque", torque), ("prediction", predicted)] {
         assert!((930..=970).contains(&count), "{what}: {count} of 1000");
     }
-    assert!(
-        (delay_sum / 1000.0 - DEAD_S).abs() < 0.0005,
-        "{}",
-        delay_sum / 1000.0
-    );
+    assert!((delay_sum / 1000.0 - DEAD_S).abs() < 0.0005, "{}", delay_sum / 1000.0);
     assert!((torque_sum / 1000.0 / FULL_NM - 1.0).abs() < 0.01);
     // A 1 % test that finds fault with right data in more than 3 % of cases would be wrong.
     assert!(lacking <= 30, "{lacking}");
@@ -179,8 +150,7 @@ fn two_speeds_split_delay_from_friction() {
             .collect();
         let found = fit_stops(&request(conditions, Unknowns::DelayAndTorque)).unwrap();
         delay += u32::from(found.dead_time_s.low <= DEAD_S && DEAD_S <= found.dead_time_s.high);
-        torque +=
-            u32::from(found.full_torque_nm.low <= FULL_NM && FULL_NM <= found.full_torque_nm.high);
+        torque += u32::from(found.full_torque_nm.low <= FULL_NM && FULL_NM <= found.full_torque_nm.high);
     }
     println!("delay {delay}, torque {torque} of 1000");
     for count in [delay, torque] {
@@ -193,10 +163,7 @@ fn two_speeds_split_delay_from_friction() {
 fn a_wrong_rise_time_shows_as_lack_of_fit() {
     let mut places = PLACES.to_vec();
     places.extend([(90.0, 4.0, 0.0), (90.0, 8.0, 0.0)]);
-    let conditions = places
-        .iter()
-        .map(|p| condition(*p, true_time(p.0, p.1, p.2), 0.0005, 10))
-        .collect();
+    let conditions = places.iter().map(|p| condition(*p, true_time(p.0, p.1, p.2), 0.0005, 10)).collect();
     let mut request = request(conditions, Unknowns::DelayAndTorque);
     request.rise_time_s = 0.01;
     let found = fit_stops(&request).unwrap();
@@ -206,75 +173,39 @@ fn a_wrong_rise_time_shows_as_lack_of_fit() {
 #[test]
 fn data_that_cannot_tell_are_refused() {
     let at = |p: (f64, f64, f64)| condition(p, true_time(p.0, p.1, p.2), 0.002, 5);
-    let refused = |conditions: Vec<FitCondition>, unknowns| {
-        fit_stops(&request(conditions, unknowns)).unwrap_err()
-    };
+    let refused = |conditions: Vec<FitCondition>, unknowns| fit_stops(&request(conditions, unknowns)).unwrap_err();
     // One speed, different angles.
-    let refusal = refused(
-        vec![
-            at((45.0, 40.0, 0.0)),
-            at((90.0, 40.0, 0.0)),
-            at((90.0, 40.0, 300.0)),
-        ],
-        Unknowns::DelayAndTorque,
-    );
+    let refusal =
+        refused(vec![at((45.0, 40.0, 0.0)), at((90.0, 40.0, 0.0)), at((90.0, 40.0, 300.0))], Unknowns::DelayAndTorque);
     assert_eq!(
         refusal.to_string(),
         "All stops were timed at one speed, 40 1/min. One speed cannot tell delay from friction: a longer delay and a weaker brake look the \
          same. Time at least five stops at another speed, for example 20 1/min, at the same angle with the same die."
     );
     // Two speeds so close that the scatter hides their difference.
-    let refusal = refused(
-        vec![at((90.0, 40.0, 0.0)), at((90.0, 40.8, 0.0))],
-        Unknowns::DelayAndTorque,
-    );
-    assert!(
-        matches!(refusal, MotionRefusal::CannotSeparate { .. }),
-        "{refusal}"
-    );
+    let refusal = refused(vec![at((90.0, 40.0, 0.0)), at((90.0, 40.8, 0.0))], Unknowns::DelayAndTorque);
+    assert!(matches!(refusal, MotionRefusal::CannotSeparate { .. }), "{refusal}");
     assert!(refusal.to_string().contains("cannot tell"), "{refusal}");
-    let refusal = refused(
-        vec![at((90.0, 20.0, 0.0)), at((90.0, 40.0, 0.0))],
-        Unknowns::DelayTorqueAndFriction,
-    );
-    assert!(
-        matches!(refusal, MotionRefusal::TooFewConditions { .. }),
-        "{refusal}"
-    );
-    assert!(matches!(
-        refused(vec![], Unknowns::DelayAndTorque),
-        MotionRefusal::TooFewConditions { given: 0, .. }
-    ));
-    for (mean, deviation, stops) in [
-        (f64::NAN, 0.002, 5),
-        (0.1, 0.0, 5),
-        (0.1, f64::INFINITY, 5),
-        (0.1, 0.002, 1),
-        (-0.1, 0.002, 5),
-    ] {
+    let refusal = refused(vec![at((90.0, 20.0, 0.0)), at((90.0, 40.0, 0.0))], Unknowns::DelayTorqueAndFriction);
+    assert!(matches!(refusal, MotionRefusal::TooFewConditions { .. }), "{refusal}");
+    assert!(matches!(refused(vec![], Unknowns::DelayAndTorque), MotionRefusal::TooFewConditions { given: 0, .. }));
+    for (mean, deviation, stops) in
+        [(f64::NAN, 0.002, 5), (0.1, 0.0, 5), (0.1, f64::INFINITY, 5), (0.1, 0.002, 1), (-0.1, 0.002, 5)]
+    {
         let bad = condition((90.0, 40.0, 0.0), mean, deviation, stops);
         let refusal = refused(vec![at((90.0, 20.0, 0.0)), bad], Unknowns::DelayAndTorque);
-        assert!(
-            matches!(refusal, MotionRefusal::OutOfRange { .. }),
-            "{refusal}"
-        );
+        assert!(matches!(refusal, MotionRefusal::OutOfRange { .. }), "{refusal}");
     }
     // Stops shorter than the rise time allows for at any delay: the best delay would be negative.
     let short = |speed| condition((90.0, speed, 0.0), 0.002 + 0.0001 * speed, 0.0001, 5);
-    let refusal = refused(
-        vec![short(20.0), short(40.0), short(60.0)],
-        Unknowns::DelayAndTorque,
-    );
+    let refusal = refused(vec![short(20.0), short(40.0), short(60.0)], Unknowns::DelayAndTorque);
     assert!(matches!(refusal, MotionRefusal::NoFit { .. }), "{refusal}");
 }
 
 /// A fitted brake is a brake like any other.
 #[test]
 fn a_fit_predicts() {
-    let conditions = PLACES
-        .iter()
-        .map(|p| condition(*p, true_time(p.0, p.1, p.2), 0.001, 10))
-        .collect();
+    let conditions = PLACES.iter().map(|p| condition(*p, true_time(p.0, p.1, p.2), 0.001, 10)).collect();
     let found = fit_stops(&request(conditions, Unknowns::DelayAndTorque)).unwrap();
     let one = found.predict(&drive_a(), command(80.0, 55.0), 1).unwrap();
     let many = found.predict(&drive_a(), command(80.0, 55.0), 100).unwrap();
@@ -286,8 +217,5 @@ fn a_fit_predicts() {
     assert!(width(many) < 0.5 * width(one));
     assert!(found.predict(&drive_a(), command(80.0, 55.0), 0).is_err());
     let brake = Brake::Ramp(RampBrake::new(DEAD_S, RISE_S, FULL_NM).unwrap());
-    assert_eq!(
-        brake.torque_law(StopPath::Normal),
-        brake.torque_law(StopPath::Emergency)
-    );
+    assert_eq!(brake.torque_law(StopPath::Normal), brake.torque_law(StopPath::Emergency));
 }

@@ -2,15 +2,12 @@
 
 use super::drives::{brake_r, command, drive_a, flywheel, ramp};
 use calc::motion::{
-    BrakeParts, Counterbalance, Drive, DriveData, Kinematics, MeanRadius, SliderCrank, StopPath,
-    Tolerance, mean_radius_m, rad_from_deg, rad_s_from_per_min, spring_force_n, stop,
+    BrakeParts, Counterbalance, Drive, DriveData, Kinematics, MeanRadius, SliderCrank, StopPath, Tolerance,
+    mean_radius_m, rad_from_deg, rad_s_from_per_min, spring_force_n, stop,
 };
 
 fn within(found: f64, wanted: f64, half_unit: f64, what: &str) {
-    assert!(
-        (found - wanted).abs() <= half_unit,
-        "{what}: found {found}, wanted {wanted}"
-    );
+    assert!((found - wanted).abs() <= half_unit, "{what}: found {found}, wanted {wanted}");
 }
 
 /// Exact slider-crank formula worked by hand: r = 50 mm, l = 400 mm, 60 rev/min; x in mm, v in mm/s, as many digits as given.
@@ -68,24 +65,10 @@ fn added_inertia_and_weight_torque() {
         friction_torque_nm: 0.0,
     })
     .unwrap();
-    for (deg, inertia, torque) in [
-        (45.0, 0.7408, 188.8),
-        (60.0, 1.0591, 225.7),
-        (90.0, 1.25, 245.3),
-    ] {
+    for (deg, inertia, torque) in [(45.0, 0.7408, 188.8), (60.0, 1.0591, 225.7), (90.0, 1.25, 245.3)] {
         let angle = rad_from_deg(deg);
-        within(
-            drive.inertia_kg_m2(angle) - 10.0,
-            inertia,
-            0.5e-4,
-            "added inertia",
-        );
-        within(
-            drive.load_torque_nm(angle) * 9.81 / 9.806_65,
-            torque,
-            0.05,
-            "weight torque",
-        );
+        within(drive.inertia_kg_m2(angle) - 10.0, inertia, 0.5e-4, "added inertia");
+        within(drive.load_torque_nm(angle) * 9.81 / 9.806_65, torque, 0.05, "weight torque");
     }
 }
 
@@ -108,12 +91,7 @@ fn disc_brake_exam_solution() {
     .unwrap();
     within(torque, 359.1, 0.05, "torque");
     within(torque, 358.8, 0.4, "torque as printed");
-    within(
-        torque * rad_s_from_per_min(500.0) / 1e3,
-        18.80,
-        0.005,
-        "power",
-    );
+    within(torque * rad_s_from_per_min(500.0) / 1e3, 18.80, 0.005, "power");
 }
 
 /// Published problem: 4 + 3 discs make 6 pairs, 240/160 mm diameter, mu 0.25, 20 kW at 1200 rev/min. Inputs as published; force and pressure
@@ -157,51 +135,16 @@ fn flywheels() {
     // I = 120 kg m2, 25 rad/s, stopped in 20 s by 150 N m: scaled a thousandfold in torque, since a stop here may take 10 s at most.
     let w = 25.0 * 30.0 / std::f64::consts::PI;
     for (inertia, speed, torque, dead, rise, time, time_half, turned_deg, deg_half) in [
-        (
-            120.0,
-            w,
-            150_000.0,
-            0.0,
-            0.0,
-            0.02,
-            1e-12,
-            0.25_f64.to_degrees(),
-            1e-9,
-        ),
-        (
-            20.0, 60.0, 800.0, 0.05, 0.0, 0.207_080, 0.5e-6, 46.2743, 0.5e-4,
-        ),
-        (
-            20.0, 60.0, 800.0, 0.0, 0.06, 0.187_080, 0.5e-6, 38.7306, 0.5e-4,
-        ),
+        (120.0, w, 150_000.0, 0.0, 0.0, 0.02, 1e-12, 0.25_f64.to_degrees(), 1e-9),
+        (20.0, 60.0, 800.0, 0.05, 0.0, 0.207_080, 0.5e-6, 46.2743, 0.5e-4),
+        (20.0, 60.0, 800.0, 0.0, 0.06, 0.187_080, 0.5e-6, 38.7306, 0.5e-4),
         // m = 400 kg, k = 0.45 m (J = 81), 225 N m, 300 rev/min: 11.310 s, 28.274 turns; with 100 times the torque a hundredth of both.
-        (
-            81.0,
-            300.0,
-            22_500.0,
-            0.0,
-            0.0,
-            0.113_10,
-            0.5e-5,
-            0.282_74 * 360.0,
-            0.002,
-        ),
+        (81.0, 300.0, 22_500.0, 0.0, 0.0, 0.113_10, 0.5e-5, 0.282_74 * 360.0, 0.002),
     ] {
         let law = ramp(dead, rise, torque).torque_law(StopPath::Normal);
-        let found = stop(
-            &flywheel(inertia),
-            &law,
-            command(0.0, speed),
-            Tolerance::STANDARD,
-        )
-        .unwrap();
+        let found = stop(&flywheel(inertia), &law, command(0.0, speed), Tolerance::STANDARD).unwrap();
         within(found.stop_time_s, time, time_half, "time");
-        within(
-            found.stop_angle_rad.to_degrees(),
-            turned_deg,
-            deg_half,
-            "angle",
-        );
+        within(found.stop_angle_rad.to_degrees(), turned_deg, deg_half, "angle");
     }
 }
 
@@ -209,21 +152,16 @@ fn flywheels() {
 #[test]
 fn drive_a_with_ramp_brake_r() {
     let law = brake_r().torque_law(StopPath::Normal);
-    for (speed, start, time, angle, travel) in [
-        (40.0, 90.0, 101.2124, 19.8453, 24.9169),
-        (60.0, 60.0, 115.5129, 32.9590, 42.5390),
-    ] {
+    for (speed, start, time, angle, travel) in
+        [(40.0, 90.0, 101.2124, 19.8453, 24.9169), (60.0, 60.0, 115.5129, 32.9590, 42.5390)]
+    {
         let found = stop(&drive_a(), &law, command(start, speed), Tolerance::STANDARD).unwrap();
         within(found.stop_time_s * 1e3, time, 0.5e-4, "time");
         within(found.stop_angle_rad.to_degrees(), angle, 0.5e-4, "angle");
         within(found.slide_travel_m * 1e3, travel, 0.5e-4, "travel");
     }
     // Of 45, 60, 90, 120, 150 deg at 60/min the longest is at 60.
-    let time = |deg: f64| {
-        stop(&drive_a(), &law, command(deg, 60.0), Tolerance::STANDARD)
-            .unwrap()
-            .stop_time_s
-    };
+    let time = |deg: f64| stop(&drive_a(), &law, command(deg, 60.0), Tolerance::STANDARD).unwrap().stop_time_s;
     for deg in [45.0, 90.0, 120.0, 150.0] {
         assert!(time(deg) < time(60.0), "{deg}");
     }

@@ -1,9 +1,9 @@
 //! Stops against SciPy's DOP853, checked there against Radau or LSODA. The table and the script that wrote it stand beside this file.
 
 use calc::motion::{
-    Brake, Counterbalance, Drive, DriveData, Exhaust, Kinematics, LinkDrive, MotionRefusal,
-    PressureBrake, PressureBrakeData, RampBrake, SliderCrank, StopCommand, StopPath, Tolerance,
-    TravelRow, rad_from_deg, rad_s_from_per_min, stop,
+    Brake, Counterbalance, Drive, DriveData, Exhaust, Kinematics, LinkDrive, MotionRefusal, PressureBrake,
+    PressureBrakeData, RampBrake, SliderCrank, StopCommand, StopPath, Tolerance, TravelRow, rad_from_deg,
+    rad_s_from_per_min, stop,
 };
 use std::collections::BTreeMap;
 use std::f64::consts::TAU;
@@ -19,10 +19,7 @@ fn link_drive(stroke_m: f64, rod_m: f64) -> LinkDrive {
             let uneven = angle_rad - 0.125 * (1.0 - angle_rad.cos()) * angle_rad.sin();
             let across = r / l * uneven.sin();
             let travel = r * (1.0 - uneven.cos()) + l * (1.0 - (1.0 - across * across).sqrt());
-            TravelRow {
-                angle_rad,
-                travel_m: (travel * 1e9).round() / 1e9,
-            }
+            TravelRow { angle_rad, travel_m: (travel * 1e9).round() / 1e9 }
         })
         .collect();
     LinkDrive::new(&rows).unwrap()
@@ -38,9 +35,7 @@ fn stops_agree_with_scipy() {
         let row: BTreeMap<&str, &str> = head.iter().copied().zip(line.split('\t')).collect();
         let figure = |name: &str| row[name].parse::<f64>().unwrap();
         let kinematics = match row["kinematics"] {
-            "crank" => Kinematics::SliderCrank(
-                SliderCrank::new(figure("stroke_m"), figure("rod_m")).unwrap(),
-            ),
+            "crank" => Kinematics::SliderCrank(SliderCrank::new(figure("stroke_m"), figure("rod_m")).unwrap()),
             "table" => Kinematics::LinkDrive(link_drive(figure("stroke_m"), figure("rod_m"))),
             other => panic!("unknown drive {other}"),
         };
@@ -49,9 +44,7 @@ fn stops_agree_with_scipy() {
             reduced_inertia_kg_m2: figure("j_rot"),
             slide_mass_kg: figure("slide_kg"),
             upper_die_mass_kg: figure("die_kg"),
-            counterbalance: Counterbalance::Force {
-                force_n: figure("f_cb"),
-            },
+            counterbalance: Counterbalance::Force { force_n: figure("f_cb") },
             friction_torque_nm: figure("t_f"),
         })
         .unwrap();
@@ -70,12 +63,8 @@ fn stops_agree_with_scipy() {
             )
         };
         let brake = match row["brake"] {
-            "ramp" => {
-                Brake::Ramp(RampBrake::new(figure("t_d"), figure("t_r"), figure("t_full")).unwrap())
-            }
-            "single" => pressure_brake(Exhaust::SingleStage {
-                time_constant_s: figure("tau_fast"),
-            }),
+            "ramp" => Brake::Ramp(RampBrake::new(figure("t_d"), figure("t_r"), figure("t_full")).unwrap()),
+            "single" => pressure_brake(Exhaust::SingleStage { time_constant_s: figure("tau_fast") }),
             "two" => pressure_brake(Exhaust::TwoStage {
                 fast_time_constant_s: figure("tau_fast"),
                 metered_time_constant_s: figure("tau_slow"),
@@ -91,31 +80,17 @@ fn stops_agree_with_scipy() {
         };
         let kind = format!("{} {} {}", row["kinematics"], row["brake"], row["path"]);
         *seen.entry(kind).or_default() += 1;
-        let command = StopCommand::new(
-            rad_from_deg(figure("start_deg")),
-            rad_s_from_per_min(figure("speed_per_min")),
-        )
-        .unwrap();
-        let found = stop(
-            &drive,
-            &brake.torque_law(path),
-            command,
-            Tolerance::STANDARD,
-        );
+        let command =
+            StopCommand::new(rad_from_deg(figure("start_deg")), rad_s_from_per_min(figure("speed_per_min"))).unwrap();
+        let found = stop(&drive, &brake.torque_law(path), command, Tolerance::STANDARD);
         if row["stop_s"] == "refused" {
-            assert!(
-                matches!(found, Err(MotionRefusal::CannotHold { .. })),
-                "case {number}: {found:?}"
-            );
+            assert!(matches!(found, Err(MotionRefusal::CannotHold { .. })), "case {number}: {found:?}");
             refused += 1;
             continue;
         }
         let found = found.unwrap_or_else(|refusal| panic!("case {number}: {refusal}"));
         let time_gap = (found.stop_time_s - figure("stop_s")).abs();
-        assert!(
-            time_gap <= 1e-6 + 1e-6 * figure("stop_s"),
-            "case {number}: {time_gap} s apart"
-        );
+        assert!(time_gap <= 1e-6 + 1e-6 * figure("stop_s"), "case {number}: {time_gap} s apart");
         // Much closer than asked: no further than the stated error, and the reference's own.
         assert!(
             time_gap <= found.stop_time_error_s + 2e-10,
@@ -123,15 +98,9 @@ fn stops_agree_with_scipy() {
             found.stop_time_error_s
         );
         let angle_gap = (found.stop_angle_rad - figure("stop_angle_rad")).abs();
-        assert!(
-            angle_gap <= 1e-6 * figure("stop_angle_rad"),
-            "case {number}: {angle_gap} rad apart"
-        );
+        assert!(angle_gap <= 1e-6 * figure("stop_angle_rad"), "case {number}: {angle_gap} rad apart");
         let travel_gap = (found.slide_travel_m - figure("travel_m")).abs();
-        assert!(
-            travel_gap <= 1e-6 * figure("stroke_m"),
-            "case {number}: {travel_gap} m apart"
-        );
+        assert!(travel_gap <= 1e-6 * figure("stroke_m"), "case {number}: {travel_gap} m apart");
         worst_time = worst_time.max(time_gap);
         stops += 1;
     }

@@ -2,8 +2,7 @@
 
 use super::drives::{brake_r, command, drive_a, ramp};
 use calc::motion::{
-    AngleRange, GoOn, MapCell, MotionRefusal, StopMap, StopPath, Tolerance, WorstCell,
-    rad_s_from_per_min, stop,
+    AngleRange, GoOn, MapCell, MotionRefusal, StopMap, StopPath, Tolerance, WorstCell, rad_s_from_per_min, stop,
 };
 
 fn map(angles: usize, speeds_per_min: &[f64]) -> StopMap {
@@ -11,10 +10,7 @@ fn map(angles: usize, speeds_per_min: &[f64]) -> StopMap {
         drive_a(),
         brake_r().torque_law(StopPath::Normal),
         angles,
-        speeds_per_min
-            .iter()
-            .map(|n| rad_s_from_per_min(*n))
-            .collect(),
+        speeds_per_min.iter().map(|n| rad_s_from_per_min(*n)).collect(),
         Tolerance::STANDARD,
     )
     .unwrap()
@@ -28,19 +24,8 @@ fn a_map_is_made_of_stops() {
     parts.extend(map.map_rows(111..360, |_| GoOn::Yes).unwrap());
     assert_eq!(whole, parts);
     let law = brake_r().torque_law(StopPath::Normal);
-    for (deg, speed, column) in [
-        (0_u16, 20.0, 0),
-        (90, 40.0, 1),
-        (60, 60.0, 2),
-        (359, 60.0, 2),
-    ] {
-        let alone = stop(
-            &drive_a(),
-            &law,
-            command(f64::from(deg), speed),
-            Tolerance::STANDARD,
-        )
-        .unwrap();
+    for (deg, speed, column) in [(0_u16, 20.0, 0), (90, 40.0, 1), (60, 60.0, 2), (359, 60.0, 2)] {
+        let alone = stop(&drive_a(), &law, command(f64::from(deg), speed), Tolerance::STANDARD).unwrap();
         let MapCell::Stop { stop_time_s, .. } = whole[usize::from(deg)].cells[column] else {
             panic!("no stop at {deg} deg");
         };
@@ -61,10 +46,7 @@ fn a_map_is_made_of_stops() {
     assert!((worst.stop_time_s - longest).abs() < 1e-15);
     assert!((worst.speed_rad_s - rad_s_from_per_min(60.0)).abs() < 1e-12);
     // A marked range across top dead centre holds only angles of that range.
-    let marked = AngleRange::Marked {
-        from_rad: 350.0_f64.to_radians(),
-        to_rad: 10.0_f64.to_radians(),
-    };
+    let marked = AngleRange::Marked { from_rad: 350.0_f64.to_radians(), to_rad: 10.0_f64.to_radians() };
     let WorstCell::Longest(worst) = map.worst(&whole, marked).unwrap() else {
         panic!("every cell has a figure");
     };
@@ -103,9 +85,7 @@ fn a_cell_without_a_figure_is_the_worst() {
 #[test]
 fn bad_maps_are_refused() {
     let law = || brake_r().torque_law(StopPath::Normal);
-    let make = |angles, speeds| {
-        StopMap::over_one_turn(drive_a(), law(), angles, speeds, Tolerance::STANDARD)
-    };
+    let make = |angles, speeds| StopMap::over_one_turn(drive_a(), law(), angles, speeds, Tolerance::STANDARD);
     assert!(make(0, vec![1.0]).is_err());
     assert!(make(36_001, vec![1.0]).is_err());
     assert!(make(36, vec![]).is_err());
@@ -113,12 +93,6 @@ fn bad_maps_are_refused() {
     let map = make(36, vec![3.0]).unwrap();
     assert!(map.map_rows(30..37, |_| GoOn::Yes).is_err());
     let rows = map.map_rows(0..36, |_| GoOn::Yes).unwrap();
-    let between = AngleRange::Marked {
-        from_rad: 0.01,
-        to_rad: 0.02,
-    };
-    assert_eq!(
-        map.worst(&rows, between),
-        Err(MotionRefusal::NothingInRange)
-    );
+    let between = AngleRange::Marked { from_rad: 0.01, to_rad: 0.02 };
+    assert_eq!(map.worst(&rows, between), Err(MotionRefusal::NothingInRange));
 }

@@ -2,17 +2,12 @@
 
 use super::drives::{brake_r, command, drive_a, drive_a_data, ramp, two_stage, two_stage_data};
 use calc::motion::{
-    Brake, BrakeCondition, Change, Counterbalance, Drive, Exhaust, MotionRefusal, PressureBrake,
-    PressureBrakeData, StopPath, StopSetup, Tolerance, rad_s_from_per_min, stop, what_if,
+    Brake, BrakeCondition, Change, Counterbalance, Drive, Exhaust, MotionRefusal, PressureBrake, PressureBrakeData,
+    StopPath, StopSetup, Tolerance, rad_s_from_per_min, stop, what_if,
 };
 
 fn setup(brake: Brake, path: StopPath) -> StopSetup {
-    StopSetup {
-        drive: drive_a(),
-        brake,
-        path,
-        command: command(90.0, 40.0),
-    }
+    StopSetup { drive: drive_a(), brake, path, command: command(90.0, 40.0) }
 }
 
 fn time(setup: &StopSetup) -> f64 {
@@ -40,16 +35,9 @@ fn angle_of_a_constant_torque_follows_from_energy() {
                 let (mut low, mut high) = (0.0, 12.0);
                 for _ in 0..100 {
                     let middle = 0.5 * (low + high);
-                    if 0.0 < left(middle) {
-                        low = middle
-                    } else {
-                        high = middle
-                    }
+                    if 0.0 < left(middle) { low = middle } else { high = middle }
                 }
-                assert!(
-                    (found.stop_angle_rad - low).abs() < 3e-9 * low,
-                    "{torque} {start} {speed}"
-                );
+                assert!((found.stop_angle_rad - low).abs() < 3e-9 * low, "{torque} {start} {speed}");
             }
         }
     }
@@ -61,20 +49,13 @@ fn what_makes_a_stop_longer() {
     let longer = |change: Change| {
         let found = what_if(&base, &[change], Tolerance::STANDARD).unwrap();
         assert!((found.before.stop_time_s - time(&base)).abs() < 1e-15);
-        assert!(
-            found.before.stop_time_s < found.after.stop_time_s,
-            "{change:?}"
-        );
+        assert!(found.before.stop_time_s < found.after.stop_time_s, "{change:?}");
         found.after
     };
     longer(Change::UpperDieMass { mass_kg: 400.0 });
-    longer(Change::Speed {
-        speed_rad_s: rad_s_from_per_min(50.0),
-    });
+    longer(Change::Speed { speed_rad_s: rad_s_from_per_min(50.0) });
     longer(Change::OperatingPressure { pressure_pa: 66e5 });
-    longer(Change::MeteredTimeConstant {
-        time_constant_s: 0.09,
-    });
+    longer(Change::MeteredTimeConstant { time_constant_s: 0.09 });
     let condition = BrakeCondition {
         fade: 0.2,
         spring_force_n: 50_000.0,
@@ -86,12 +67,8 @@ fn what_makes_a_stop_longer() {
     assert!((condition.torque_factor().unwrap() - 0.72).abs() < 1e-15);
     let worn = longer(Change::Condition(condition));
     let same = Brake::Pressure(
-        PressureBrake::new(PressureBrakeData {
-            full_torque_nm: 0.72 * 4200.0,
-            dead_time_s: 0.034,
-            ..two_stage_data()
-        })
-        .unwrap(),
+        PressureBrake::new(PressureBrakeData { full_torque_nm: 0.72 * 4200.0, dead_time_s: 0.034, ..two_stage_data() })
+            .unwrap(),
     );
     assert!((time(&setup(same, StopPath::Normal)) - worn.stop_time_s).abs() < 1e-12);
     // The hard path is the shorter one.
@@ -103,11 +80,7 @@ fn what_makes_a_stop_longer() {
 fn higher_pressure_lengthens_the_delay() {
     let law = |p0: f64| {
         Brake::Pressure(
-            PressureBrake::new(PressureBrakeData {
-                operating_pressure_pa: p0,
-                ..two_stage_data()
-            })
-            .unwrap(),
+            PressureBrake::new(PressureBrakeData { operating_pressure_pa: p0, ..two_stage_data() }).unwrap(),
         )
         .torque_law(StopPath::Normal)
     };
@@ -119,14 +92,8 @@ fn higher_pressure_lengthens_the_delay() {
 #[test]
 fn equal_stages_are_one_stage() {
     let with = |exhaust| {
-        let data = PressureBrakeData {
-            exhaust,
-            ..two_stage_data()
-        };
-        time(&setup(
-            Brake::Pressure(PressureBrake::new(data).unwrap()),
-            StopPath::Normal,
-        ))
+        let data = PressureBrakeData { exhaust, ..two_stage_data() };
+        time(&setup(Brake::Pressure(PressureBrake::new(data).unwrap()), StopPath::Normal))
     };
     let two = with(Exhaust::TwoStage {
         fast_time_constant_s: 0.025,
@@ -134,9 +101,7 @@ fn equal_stages_are_one_stage() {
         metered_from_pa: 12e5,
         metered_to_pa: 3e5,
     });
-    let single = with(Exhaust::SingleStage {
-        time_constant_s: 0.025,
-    });
+    let single = with(Exhaust::SingleStage { time_constant_s: 0.025 });
     assert!((two - single).abs() < 1e-10, "{two} {single}");
 }
 
@@ -151,20 +116,13 @@ fn counterbalance_is_its_force() {
         setup
     };
     let force = with(Counterbalance::Force { force_n: 8000.0 });
-    let cylinders = with(Counterbalance::Cylinders {
-        pressure_pa: 5e5,
-        area_m2: 0.016,
-    });
+    let cylinders = with(Counterbalance::Cylinders { pressure_pa: 5e5, area_m2: 0.016 });
     assert!((time(&force) - time(&cylinders)).abs() < 1e-13);
     assert!(time(&force) < time(&with(Counterbalance::None)));
-    let balanced = with(Counterbalance::Force {
-        force_n: 900.0 * 9.80665,
-    });
+    let balanced = with(Counterbalance::Force { force_n: 900.0 * 9.80665 });
     let found = balanced.stop(Tolerance::STANDARD).unwrap();
     assert!(found.energy.gravity_work_j.abs() < 1e-9 && found.load_torque_nm.abs() < 1e-9);
-    let softer = cylinders
-        .with(&Change::CounterbalancePressure { pressure_pa: 4e5 })
-        .unwrap();
+    let softer = cylinders.with(&Change::CounterbalancePressure { pressure_pa: 4e5 }).unwrap();
     assert!(time(&cylinders) < time(&softer));
     assert!(matches!(
         force.with(&Change::CounterbalancePressure { pressure_pa: 4e5 }),
@@ -184,14 +142,8 @@ fn a_falling_slide_may_speed_up() {
     })
     .unwrap();
     let law = ramp(0.01, 0.3, 12_000.0).torque_law(StopPath::Normal);
-    let curves =
-        calc::motion::stop_curves(&drive, &law, command(60.0, 20.0), Tolerance::STANDARD, 500)
-            .unwrap();
-    let fastest = curves
-        .points
-        .iter()
-        .map(|point| point.crank_speed_rad_s)
-        .fold(0.0, f64::max);
+    let curves = calc::motion::stop_curves(&drive, &law, command(60.0, 20.0), Tolerance::STANDARD, 500).unwrap();
+    let fastest = curves.points.iter().map(|point| point.crank_speed_rad_s).fold(0.0, f64::max);
     assert!(1.01 * rad_s_from_per_min(20.0) < fastest);
 }
 
@@ -216,8 +168,7 @@ fn standstill_just_before_top_dead_centre_is_not_missed() {
         let left = |turned: f64| {
             0.5 * drive.inertia_kg_m2(from) * rad_s_from_per_min(speed).powi(2)
                 + drive.net_weight_n()
-                    * (drive.kinematics().travel_m(from + turned)
-                        - drive.kinematics().travel_m(from))
+                    * (drive.kinematics().travel_m(from + turned) - drive.kinematics().travel_m(from))
                 - torque * turned
         };
         let step = 1e-3;
@@ -237,11 +188,7 @@ fn standstill_just_before_top_dead_centre_is_not_missed() {
             match found {
                 Ok(found) => {
                     assert!(torque >= drive.load_torque_nm(from + low).abs() - 0.1);
-                    assert!(
-                        (found.stop_angle_rad - low).abs() < 1e-5,
-                        "{speed}: {} {low}",
-                        found.stop_angle_rad
-                    );
+                    assert!((found.stop_angle_rad - low).abs() < 1e-5, "{speed}: {} {low}", found.stop_angle_rad);
                 }
                 Err(MotionRefusal::CannotHold { angle_rad, .. }) => {
                     assert!((angle_rad - from - low).abs() < 1e-5, "{speed}");
@@ -256,8 +203,5 @@ fn standstill_just_before_top_dead_centre_is_not_missed() {
             }
         }
     }
-    assert!(
-        200 < before && 200 < carried_over,
-        "{before} {carried_over}"
-    );
+    assert!(200 < before && 200 < carried_over, "{before} {carried_over}");
 }

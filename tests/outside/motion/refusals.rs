@@ -2,9 +2,9 @@
 
 use super::drives::{brake_r, command, drive_a, drive_a_data, flywheel, ramp, two_stage_data};
 use calc::motion::{
-    BrakeCondition, BrakeParts, Change, Counterbalance, Drive, DriveData, Exhaust, MeanRadius,
-    MotionRefusal, PressureBrake, PressureBrakeData, RampBrake, SliderCrank, StopCommand, StopPath,
-    StopSetup, Tolerance, stop, stop_curves,
+    BrakeCondition, BrakeParts, Change, Counterbalance, Drive, DriveData, Exhaust, MeanRadius, MotionRefusal,
+    PressureBrake, PressureBrakeData, RampBrake, SliderCrank, StopCommand, StopPath, StopSetup, Tolerance, stop,
+    stop_curves,
 };
 
 const NO_NUMBERS: [f64; 3] = [f64::NAN, f64::INFINITY, f64::NEG_INFINITY];
@@ -43,10 +43,7 @@ fn drives() {
         refused(&|data| data.friction_torque_nm = bad);
         refused(&|data| data.counterbalance = Counterbalance::Force { force_n: bad });
         refused(&|data| {
-            data.counterbalance = Counterbalance::Cylinders {
-                pressure_pa: bad,
-                area_m2: 0.01,
-            };
+            data.counterbalance = Counterbalance::Cylinders { pressure_pa: bad, area_m2: 0.01 };
         });
     }
     check_sentence(SliderCrank::new(0.15, 0.06).unwrap_err());
@@ -94,9 +91,7 @@ fn brakes() {
         refused(&|data| data.clutch_release_pressure_pa = bad);
         refused(&|data| data.emergency_time_constant_s = bad);
         refused(&|data| {
-            data.exhaust = Exhaust::SingleStage {
-                time_constant_s: bad,
-            };
+            data.exhaust = Exhaust::SingleStage { time_constant_s: bad };
         });
     }
     for order in [
@@ -112,10 +107,7 @@ fn brakes() {
             };
         }),
     ] {
-        assert!(
-            matches!(order, MotionRefusal::PressureOrder { .. }),
-            "{order}"
-        );
+        assert!(matches!(order, MotionRefusal::PressureOrder { .. }), "{order}");
     }
 }
 
@@ -130,11 +122,7 @@ fn parts_wear_and_changes() {
         mean_radius: MeanRadius::UniformWear,
     };
     check_sentence(parts.full_torque_nm().unwrap_err());
-    let no_faces = BrakeParts {
-        friction_faces: 0,
-        inner_radius_m: 0.05,
-        ..parts
-    };
+    let no_faces = BrakeParts { friction_faces: 0, inner_radius_m: 0.05, ..parts };
     check_sentence(no_faces.full_torque_nm().unwrap_err());
     let worn = BrakeCondition {
         fade: 0.0,
@@ -147,27 +135,12 @@ fn parts_wear_and_changes() {
     assert!(matches!(refusal, MotionRefusal::SpringForceGone { .. }));
     check_sentence(refusal);
     for bad in NO_NUMBERS.into_iter().chain([-0.1, 1.0]) {
-        check_sentence(
-            BrakeCondition {
-                fade: bad,
-                worn_depth_m: 0.0,
-                ..worn
-            }
-            .torque_factor()
-            .unwrap_err(),
-        );
+        check_sentence(BrakeCondition { fade: bad, worn_depth_m: 0.0, ..worn }.torque_factor().unwrap_err());
     }
-    let setup = StopSetup {
-        drive: drive_a(),
-        brake: brake_r(),
-        path: StopPath::Normal,
-        command: command(90.0, 40.0),
-    };
+    let setup = StopSetup { drive: drive_a(), brake: brake_r(), path: StopPath::Normal, command: command(90.0, 40.0) };
     for change in [
         Change::OperatingPressure { pressure_pa: 5e6 },
-        Change::MeteredTimeConstant {
-            time_constant_s: 0.1,
-        },
+        Change::MeteredTimeConstant { time_constant_s: 0.1 },
         Change::CounterbalancePressure { pressure_pa: 5e5 },
     ] {
         let refusal = setup.with(&change).unwrap_err();
@@ -191,50 +164,22 @@ fn stops_that_do_not_end_or_hold() {
     let unbalanced = Drive::new(data).unwrap();
     // Fully set, 400 N m against up to 680 N m of weight. A slow upstroke stops by its weight and would run back.
     let refusal = refusal_of(&unbalanced, &ramp(0.0, 0.0, 400.0), 250.0, 20.0);
-    assert!(
-        matches!(refusal, MotionRefusal::CannotHold { .. }),
-        "{refusal}"
-    );
-    assert!(
-        refusal
-            .to_string()
-            .starts_with("The brake cannot hold the slide here")
-    );
+    assert!(matches!(refusal, MotionRefusal::CannotHold { .. }), "{refusal}");
+    assert!(refusal.to_string().starts_with("The brake cannot hold the slide here"));
     // A strong brake that sets too late: the slide stands still by its weight before that.
     let refusal = refusal_of(&unbalanced, &ramp(0.0, 2.0, 4000.0), 250.0, 20.0);
-    assert!(
-        matches!(refusal, MotionRefusal::CannotHold { .. }),
-        "{refusal}"
-    );
+    assert!(matches!(refusal, MotionRefusal::CannotHold { .. }), "{refusal}");
     assert!(refusal.to_string().contains("would run back"), "{refusal}");
     // In the dead time alone the crank turns too far; or the brake takes for ever.
     let refusal = refusal_of(&flywheel(20.0), &ramp(5.0, 0.0, 800.0), 0.0, 60.0);
-    assert!(
-        matches!(refusal, MotionRefusal::NoStandstillInAngle { .. }),
-        "{refusal}"
-    );
+    assert!(matches!(refusal, MotionRefusal::NoStandstillInAngle { .. }), "{refusal}");
     let refusal = refusal_of(&flywheel(20.0), &ramp(0.0, 0.0, 1.0), 0.0, 60.0);
-    assert!(
-        matches!(refusal, MotionRefusal::NoStandstillInAngle { .. }),
-        "{refusal}"
-    );
+    assert!(matches!(refusal, MotionRefusal::NoStandstillInAngle { .. }), "{refusal}");
     let refusal = refusal_of(&flywheel(20.0), &ramp(0.0, 0.0, 0.2), 0.0, 1.0);
-    assert!(
-        matches!(refusal, MotionRefusal::NoStandstillInTime { .. }),
-        "{refusal}"
-    );
+    assert!(matches!(refusal, MotionRefusal::NoStandstillInTime { .. }), "{refusal}");
     let law = brake_r().torque_law(StopPath::Normal);
     for bad in [0, 200_000] {
-        check_sentence(
-            stop_curves(
-                &drive_a(),
-                &law,
-                command(0.0, 30.0),
-                Tolerance::STANDARD,
-                bad,
-            )
-            .unwrap_err(),
-        );
+        check_sentence(stop_curves(&drive_a(), &law, command(0.0, 30.0), Tolerance::STANDARD, bad).unwrap_err());
     }
 }
 
@@ -263,21 +208,10 @@ fn extremes_give_a_stop_or_a_refusal() {
                             for speed in [0.1, 60.0, 3000.0] {
                                 let law = ramp(dead, rise, torque).torque_law(StopPath::Normal);
                                 for start in [0.0, 100.0, 180.0, 275.0] {
-                                    match stop(
-                                        &drive,
-                                        &law,
-                                        command(start, speed),
-                                        Tolerance::STANDARD,
-                                    ) {
+                                    match stop(&drive, &law, command(start, speed), Tolerance::STANDARD) {
                                         Ok(found) => {
-                                            assert!(
-                                                found.stop_time_s.is_finite()
-                                                    && 0.0 < found.stop_time_s
-                                            );
-                                            assert!(
-                                                found.stop_angle_rad.is_finite()
-                                                    && 0.0 <= found.stop_angle_rad
-                                            );
+                                            assert!(found.stop_time_s.is_finite() && 0.0 < found.stop_time_s);
+                                            assert!(found.stop_angle_rad.is_finite() && 0.0 <= found.stop_angle_rad);
                                             assert!(found.stop_time_error_s.is_finite());
                                             answered += 1;
                                         }

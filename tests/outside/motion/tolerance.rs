@@ -59,10 +59,8 @@ fn stated_error_covers_the_error() {
             for tolerance in [1e-5, 1e-7, 1e-9] {
                 let found = solve(tolerance).unwrap();
                 let error = (found.stop_time_s - truth.stop_time_s).abs();
-                greatest_share =
-                    greatest_share.max(error / (found.stop_time_error_s + truth.stop_time_error_s));
-                greatest_stated =
-                    greatest_stated.max(found.stop_time_error_s / (tolerance * found.stop_time_s));
+                greatest_share = greatest_share.max(error / (found.stop_time_error_s + truth.stop_time_error_s));
+                greatest_stated = greatest_stated.max(found.stop_time_error_s / (tolerance * found.stop_time_s));
             }
         }
     });
@@ -81,12 +79,7 @@ fn energy_balances() {
             if let Some(found) = solve(tolerance) {
                 assert!(found.energy.missing_share().abs() <= 100.0 * tolerance + 1e-13);
                 let spans = found.spans;
-                let parts = [
-                    spans.delay_s,
-                    spans.clutch_release_s,
-                    spans.build_up_s,
-                    spans.braking_s,
-                ];
+                let parts = [spans.delay_s, spans.clutch_release_s, spans.build_up_s, spans.braking_s];
                 assert!(parts.iter().all(|part| 0.0 <= *part), "{parts:?}");
                 assert!((parts.iter().sum::<f64>() - found.stop_time_s).abs() < 1e-14);
             }
@@ -99,8 +92,7 @@ fn energy_balances() {
 fn curves_belong_to_the_stop() {
     for law in laws() {
         let drive = drive_a();
-        let curves =
-            stop_curves(&drive, &law, command(70.0, 45.0), Tolerance::STANDARD, 4000).unwrap();
+        let curves = stop_curves(&drive, &law, command(70.0, 45.0), Tolerance::STANDARD, 4000).unwrap();
         let alone = stop(&drive, &law, command(70.0, 45.0), Tolerance::STANDARD).unwrap();
         assert_eq!(curves.stop, alone);
         let (first, last) = (curves.points[0], curves.points[4000]);

@@ -1,0 +1,307 @@
+//! The entry field: text stays as it was typed until it is valid, and nothing ever changes by being drawn.
+//!
+//! Enter, Tab and leaving commit; Escape brings the committed value back. What cannot be taken stays, marked in words. There
+//! is no dragging, no wheel and no stepping.
+
+use std::collections::HashMap;
+
+use calc::calendar::{Moment, parse_date};
+use calc::decimal::{self, Side};
+use calc::limits::Limit;
+use calc::refusal::Refusal;
+use calc::round::{Towards, length_digits_full, thousandths_text};
+use calc::units::{Length, LengthUnit};
+use egui::{Id, Key, Response, TextEdit, Ui, WidgetText};
+use figure::Role;
+use jiff::civil::Date;
+
+use crate::window::theme;
+
+/// Texts that people are typing, by field. One for each sheet; losing it loses only what was not committed.
+#[derive(Default)]
+pub struct Drafts {
+    texts: HashMap<Id, Draft>,
+    focus: Option<Id>,
+}
+
+struct Draft {
+    text: String,
+    /// The committed text that the draft began from; when it changes underneath, by undo or a paste, the draft is stale.
+    began_from: String,
+    refusal: Option<Refusal>,
+}
+
+impl Drafts {
+    /// Forgets every draft.
+    pub fn clear(&mut self) {
+        *self = Self::default();
+    }
+
+    /// Whether a field holds text that could not be taken.
+    pub fn has_refusals(&self) -> bool {
+        self.texts.values().any(|draft| draft.refusal.is_some())
+    }
+
+    /// Puts the cursor into a field as soon as it is drawn.
+    pub fn focus(&mut self, id: Id) {
+        self.focus = Some(id);
+    }
+
+    /// The refusal that stands at a field.
+    pub fn refusal(&self, id: Id) -> Option<&Refusal> {
+        self.texts.get(&id)?.refusal.as_ref()
+    }
+
+    /// Keeps text that could not be taken at a field, with the reason.
+    pub fn keep_refused(&mut self, id: Id, text: String, refusal: Refusal) {
+        let began_from = self.texts.get(&id).map_or(String::new(), |draft| draft.began_from.clone());
+        self.texts.insert(id, Draft { text, began_from, refusal: Some(refusal) });
+    }
+}
+
+/// How the cursor left a field.
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
+pub enum Moved {
+    /// By Enter.
+    Enter,
+    /// By Tab, or to another place.
+    Away,
+}
+
+/// What came of a field in this frame.
+#[derive(Clone, PartialEq, Debug)]
+pub enum Commit<T> {
+    /// A value to take over; the way the cursor left comes with it.
+    Set(T, Moved),
+    /// The field was emptied.
+    Cleared(Moved),
+    /// Text that cannot be taken; it stays in the field with the reason.
+    Refused,
+    /// Left by Enter without a change.
+    Passed,
+}
+
+/// How a field is shown.
+#[derive(Clone, Copy, Debug)]
+pub struct FieldKind<'a> {
+    /// Its name, also for screen readers.
+    pub label: &'a str,
+    /// The unit behind it.
+    pub unit: &'a str,
+    /// Its width in points.
+    pub width: f32,
+    /// Whether its text ends at the right, as figures do.
+    pub is_figure: bool,
+    /// Whether its name stands before it, or is for screen readers only.
+    pub shows_label: bool,
+    /// What it holds when empty, shown faintly.
+    pub hint: &'a str,
+}
+
+impl<'a> FieldKind<'a> {
+    /// A field for a figure, with its name before it.
+    pub const fn figure(label: &'a str, unit: &'a str) -> Self {
+        Self { label, unit, width: 78.0, is_figure: true, shows_label: true, hint: "" }
+    }
+
+    /// A field for words, with its name before it.
+    pub const fn words(label: &'a str) -> Self {
+        Self { label, unit: "", width: 220.0, is_figure: false, shows_label: true, hint: "" }
+    }
+
+    /// The same field in another width.
+    pub const fn wide(self, width: f32) -> Self {
+        Self { width, ..self }
+    }
+
+    /// The same field without its name before it, as in a table.
+    pub const fn bare(self) -> Self {
+        Self { shows_label: false, ..self }
+    }
+
+    /// The same field with a hint.
+    pub const fn hint(self, hint: &'a str) -> Self {
+        Self { hint, ..self }
+    }
+}
+
+/// An entry field. `committed` is the text of the stored value; `read` takes the typed text or refuses it.
+///
+/// The identity must come from the data (tag of the press and name of the field), never from the position on the sheet.
+pub fn field_ui<T>(
+    ui: &mut Ui,
+    id: Id,
+    kind: FieldKind,
+    committed: &str,
+    drafts: &mut Drafts,
+    read: impl FnOnce(&str) -> Result<T, Refusal>,
+) -> Option<Commit<T>> {
+    if drafts.texts.get(&id).is_some_and(|draft| draft.began_from != committed) {
+        drafts.texts.remove(&id);
+    }
+    let mut text = drafts.texts.get(&id).map_or_else(|| committed.to_owned(), |draft| draft.text.clone());
+    let is_refused = drafts.refusal(id).is_some();
+    let response = ui
+        .horizontal(|ui| {
+            let label = if kind.shows_label { Some(ui.label(kind.label)) } else { None };
+            let mut edit = TextEdit::singleline(&mut text)
+                .id(id)
+                .desired_width(kind.width)
+                .hint_text(WidgetText::from(kind.hint).color(theme::colour(ui.ctx(), Role::Faint)));
+            if kind.is_figure {
+                edit = edit.align(egui::Align2::RIGHT_CENTER);
+            }
+            if is_refused {
+                edit = edit.text_color(theme::colour(ui.ctx(), Role::Short));
+            }
+            let response = ui.add(edit);
+            match label {
+                Some(label) => {
+                    response.clone().labelled_by(label.id);
+                }
+                None => response.widget_info(|| {
+                    let mut info = egui::WidgetInfo::labeled(egui::Role::TextInput, true, kind.label);
+                    info.current_text_value = Some(text.clone());
+                    info
+                }),
+            }
+            if !kind.unit.is_empty() {
+                ui.label(egui::RichText::new(kind.unit).color(theme::colour(ui.ctx(), Role::Faint)));
+            }
+            if is_refused {
+                let painter = ui.painter();
+                painter.rect_stroke(
+                    response.rect,
+                    3.0,
+                    egui::Stroke::new(1.5, theme::colour(ui.ctx(), Role::Short)),
+                    egui::StrokeKind::Inside,
+                );
+            }
+            response
+        })
+        .inner;
+    if drafts.focus == Some(id) {
+        drafts.focus = None;
+        response.request_focus();
+    }
+    if response.gained_focus() {
+        select_all(ui, &response, text.chars().count());
+    }
+    if let Some(refusal) = drafts.refusal(id) {
+        response.clone().on_hover_text(refusal.to_string());
+    }
+    settle(ui, id, &response, text, committed, drafts, read)
+}
+
+/// What typing, Enter, Tab, Escape and leaving make of the field.
+fn settle<T>(
+    ui: &Ui,
+    id: Id,
+    response: &Response,
+    text: String,
+    committed: &str,
+    drafts: &mut Drafts,
+    read: impl FnOnce(&str) -> Result<T, Refusal>,
+) -> Option<Commit<T>> {
+    if !response.lost_focus() {
+        if response.changed() {
+            let refusal = None;
+            drafts.texts.insert(id, Draft { text, began_from: committed.to_owned(), refusal });
+        }
+        return None;
+    }
+    let (enter, escape) = ui.input(|input| (input.key_pressed(Key::Enter), input.key_pressed(Key::Escape)));
+    if escape {
+        drafts.texts.remove(&id);
+        return None;
+    }
+    let moved = if enter { Moved::Enter } else { Moved::Away };
+    if text.trim() == committed.trim() {
+        drafts.texts.remove(&id);
+        return enter.then_some(Commit::Passed);
+    }
+    if text.trim().is_empty() {
+        drafts.texts.remove(&id);
+        return Some(Commit::Cleared(moved));
+    }
+    match read(&text) {
+        Ok(value) => {
+            drafts.texts.remove(&id);
+            Some(Commit::Set(value, moved))
+        }
+        Err(refusal) => {
+            drafts.texts.insert(id, Draft { text, began_from: committed.to_owned(), refusal: Some(refusal) });
+            Some(Commit::Refused)
+        }
+    }
+}
+
+fn select_all(ui: &Ui, response: &Response, length: usize) {
+    use egui::text::{CCursor, CCursorRange};
+    if let Some(mut state) = TextEdit::load_state(ui.ctx(), response.id) {
+        state.cursor.set_char_range(Some(CCursorRange::two(CCursor::new(0), CCursor::new(length))));
+        state.store(ui.ctx(), response.id);
+    }
+}
+
+/// A field for a figure within a limit, in thousandths of the limit's unit.
+pub fn number_field(
+    ui: &mut Ui,
+    id: Id,
+    kind: FieldKind,
+    limit: &Limit,
+    current: Option<i64>,
+    drafts: &mut Drafts,
+) -> Option<Commit<i64>> {
+    let committed = current.map_or(String::new(), thousandths_text);
+    field_ui(ui, id, kind, &committed, drafts, |text| limit.take_text(text))
+}
+
+/// A field for a length in the shown unit; the last micrometre of inches falls to the cautious side.
+#[allow(clippy::too_many_arguments)]
+pub fn length_field(
+    ui: &mut Ui,
+    id: Id,
+    kind: FieldKind,
+    limit: &Limit,
+    unit: LengthUnit,
+    side: Side,
+    current: Option<Length>,
+    drafts: &mut Drafts,
+) -> Option<Commit<Length>> {
+    let committed = current.map_or(String::new(), |length| length_digits_full(length, unit, Towards::Nearest));
+    let kind = FieldKind { unit: unit.sign(), ..kind };
+    field_ui(ui, id, kind, &committed, drafts, |text| {
+        let length = decimal::length(text, unit, side).map_err(|why| limit.unreadable(text, why))?;
+        limit.take(length.base()).map(Length::from_base)
+    })
+}
+
+/// A field for words. An emptied one gives [`Commit::Cleared`].
+pub fn text_field(ui: &mut Ui, id: Id, kind: FieldKind, current: &str, drafts: &mut Drafts) -> Option<Commit<String>> {
+    field_ui(ui, id, kind, current, drafts, |text| Ok(text.trim().to_owned()))
+}
+
+/// A field for a day.
+pub fn date_field(
+    ui: &mut Ui,
+    id: Id,
+    kind: FieldKind,
+    current: Option<Date>,
+    drafts: &mut Drafts,
+) -> Option<Commit<Date>> {
+    let committed = current.map_or(String::new(), |date| date.to_string());
+    field_ui(ui, id, kind.hint("year-month-day"), &committed, drafts, |text| parse_date(kind.label, text))
+}
+
+/// A field for a day with or without a time of day.
+pub fn moment_field(
+    ui: &mut Ui,
+    id: Id,
+    kind: FieldKind,
+    current: Option<Moment>,
+    drafts: &mut Drafts,
+) -> Option<Commit<Moment>> {
+    let committed = current.map_or(String::new(), |moment| moment.to_string());
+    field_ui(ui, id, kind.hint("2026-11-03 14:30"), &committed, drafts, |text| Moment::parse(kind.label, text))
+}

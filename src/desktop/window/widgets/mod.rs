@@ -1,0 +1,13 @@
+//! The small parts that every sheet is made of.
+
+mod choice;
+mod field;
+mod layout;
+mod step_table;
+
+pub use choice::{Named, choice_ui, segments_ui, switch_ui};
+pub use field::{
+    Commit, Drafts, FieldKind, Moved, date_field, field_ui, length_field, moment_field, number_field, text_field,
+};
+pub use layout::{answer_badge, caption, card_ui, empty_state, heading, pairs_row, refusal_line, shortcut_button};
+pub use step_table::step_table_ui;

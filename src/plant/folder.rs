@@ -1,0 +1,250 @@
+//! The plant folder: opening all of it, opening one press, saving what has changed.
+
+use std::collections::BTreeMap;
+use std::fs;
+use std::path::{Path, PathBuf};
+
+use calc::plant_settings::PlantSettings;
+use calc::press::{Press, check_tag};
+
+use crate::read::{FileRefusal, PlantRefusal, read_text};
+use crate::{v1, write_whole};
+
+const SETTINGS: &str = "plant.ron";
+const PRESSES: &str = "presses";
+/// From so many presses on they are read on several threads.
+const FEW: usize = 8;
+
+/// A plant as it was read.
+#[derive(Clone, Debug)]
+pub struct Plant {
+    /// Its folder.
+    pub folder: PathBuf,
+    /// What holds for the whole plant.
+    pub settings: PlantSettings,
+    /// Its press files, by name.
+    pub presses: Vec<StoredPress>,
+    /// The texts as they were read, by which a change by somebody else is noticed.
+    pub known: Known,
+}
+
+/// One press file.
+#[derive(Clone, Debug)]
+pub struct StoredPress {
+    /// The file.
+    pub path: PathBuf,
+    /// The press, or why it could not be read.
+    pub content: Result<Press, FileRefusal>,
+}
+
+/// The texts of a plant as this program last read or wrote them.
+#[derive(Clone, PartialEq, Eq, Debug, Default)]
+pub struct Known {
+    settings: Option<String>,
+    presses: BTreeMap<String, String>,
+}
+
+/// Opens a plant folder. A press file that cannot be read is listed with its error; the rest is opened.
+///
+/// # Errors
+/// A folder that is none, cannot be read, or has no readable `plant.ron`.
+pub fn open(folder: &Path) -> Result<Plant, PlantRefusal> {
+    let refuse = |why: String| PlantRefusal::Folder(why);
+    let kind = fs::metadata(folder)
+        .map_err(|error| refuse(format!("The folder {} cannot be opened: {error}.", folder.display())))?;
+    if !kind.is_dir() {
+        return Err(refuse(format!(
+            "{} is a file. Give the plant folder, the one that holds {SETTINGS}.",
+            folder.display()
+        )));
+    }
+    let (settings, settings_text) = open_settings(folder)?;
+    let paths = press_paths(folder)?;
+    let mut known = Known { settings: Some(settings_text), presses: BTreeMap::new() };
+    let mut presses = Vec::new();
+    for (path, read) in paths.iter().zip(read_all(&paths)) {
+        let content = read.map(|(press, text)| {
+            known.presses.insert(press.tag.clone(), text);
+            press
+        });
+        presses.push(StoredPress { path: path.clone(), content });
+    }
+    Ok(Plant { folder: folder.into(), settings, presses, known })
+}
+
+/// Opens one press file together with the plant it belongs to.
+///
+/// # Errors
+/// A press file outside the `presses` folder of a plant, or one of the two files unreadable.
+pub fn open_press_file(path: &Path) -> Result<(PlantSettings, Press), PlantRefusal> {
+    let (press, _) = read_press(path)?;
+    let absolute = std::path::absolute(path).unwrap_or_else(|_| path.into());
+    let folder = absolute.parent().and_then(Path::parent).filter(|folder| folder.join(SETTINGS).is_file()).ok_or_else(|| {
+        PlantRefusal::Folder(format!(
+            "{} belongs to no plant: there is no {SETTINGS} in the folder above its own. Keep press files in PLANT/{PRESSES}/.",
+            path.display()
+        ))
+    })?;
+    Ok((open_settings(folder)?.0, press))
+}
+
+/// Makes a new plant folder.
+///
+/// # Errors
+/// A folder that already holds a plant or anything else, or cannot be written.
+pub fn create(folder: &Path, settings: &PlantSettings) -> Result<Known, PlantRefusal> {
+    let refuse = |why: String| PlantRefusal::Folder(why);
+    if folder.join(SETTINGS).exists() {
+        return Err(refuse(format!("{} already holds a plant. Open it instead.", folder.display())));
+    }
+    if folder.is_dir() && fs::read_dir(folder).is_ok_and(|mut entries| entries.next().is_some()) {
+        return Err(refuse(format!("{} is not empty. Choose an empty folder or a new name.", folder.display())));
+    }
+    fs::create_dir_all(folder.join(PRESSES))
+        .map_err(|error| refuse(format!("The folder {} cannot be made: {error}.", folder.display())))?;
+    let mut known = Known::default();
+    save_settings(folder, settings, &mut known)?;
+    Ok(known)
+}
+
+/// Saves what holds for the whole plant.
+///
+/// # Errors
+/// A file that somebody else changed since it was read, or that cannot be written. The old file is then as it was.
+pub fn save_settings(folder: &Path, settings: &PlantSettings, known: &mut Known) -> Result<(), PlantRefusal> {
+    let path = folder.join(SETTINGS);
+    let text = v1::settings_to_text(settings);
+    check_unchanged(&path, known.settings.as_deref())?;
+    write_whole(&path, text.as_bytes())?;
+    known.settings = Some(text);
+    Ok(())
+}
+
+/// Saves one press under its tag. Where it bore another tag before, the old file goes once the new one is in place.
+///
+/// # Errors
+/// A file that somebody else changed since it was read, or that cannot be written. The old file is then as it was.
+pub fn save_press(
+    folder: &Path,
+    press: &Press,
+    previous_tag: Option<&str>,
+    known: &mut Known,
+) -> Result<(), PlantRefusal> {
+    check_tag(&press.tag).map_err(|refusal| PlantRefusal::Folder(refusal.to_string()))?;
+    let presses = folder.join(PRESSES);
+    fs::create_dir_all(&presses)
+        .map_err(|error| PlantRefusal::Folder(format!("The folder {} cannot be made: {error}.", presses.display())))?;
+    let path = press_path(folder, &press.tag);
+    let text = v1::press_to_text(press);
+    // What is written must mean what is on the screen; if it does not, the fault is ours and the old file stays.
+    match v1::press_from_text(&path, &text) {
+        Ok(back) if back == *press => {}
+        Ok(_) => {
+            return Err(PlantRefusal::Folder(format!(
+                "Press {} cannot be saved without loss. Nothing was changed.",
+                press.tag
+            )));
+        }
+        Err(refusal) => return Err(refusal.into()),
+    }
+    check_unchanged(&path, known.presses.get(&press.tag).map(String::as_str))?;
+    let moved_from = previous_tag.filter(|tag| *tag != press.tag);
+    if let Some(tag) = moved_from {
+        check_unchanged(&press_path(folder, tag), known.presses.get(tag).map(String::as_str))?;
+    }
+    write_whole(&path, text.as_bytes())?;
+    known.presses.insert(press.tag.clone(), text);
+    if let Some(tag) = moved_from {
+        let old = press_path(folder, tag);
+        if old.exists() {
+            fs::remove_file(&old).map_err(|error| {
+                PlantRefusal::Folder(format!(
+                    "Press {} is saved, but its old file {} cannot be removed: {error}.",
+                    press.tag,
+                    old.display()
+                ))
+            })?;
+        }
+        known.presses.remove(tag);
+    }
+    Ok(())
+}
+
+fn press_path(folder: &Path, tag: &str) -> PathBuf {
+    folder.join(PRESSES).join(format!("{tag}.ron"))
+}
+
+fn check_unchanged(path: &Path, known: Option<&str>) -> Result<(), PlantRefusal> {
+    let now = if path.exists() { Some(read_text(path)?) } else { None };
+    if now.as_deref() == known {
+        return Ok(());
+    }
+    Err(PlantRefusal::Folder(match (&now, known) {
+        (Some(_), None) => {
+            format!("{} already exists and was not read by this program. Nothing was changed.", path.display())
+        }
+        (None, _) => format!(
+            "{} has been removed by somebody else since it was read. Nothing was changed; save the plant to another folder.",
+            path.display()
+        ),
+        _ => format!(
+            "{} has been changed by somebody else since it was read. Nothing was changed; open the plant again.",
+            path.display()
+        ),
+    }))
+}
+
+fn open_settings(folder: &Path) -> Result<(PlantSettings, String), PlantRefusal> {
+    let path = folder.join(SETTINGS);
+    if !path.exists() {
+        return Err(PlantRefusal::Folder(format!("{} is no plant folder: it holds no {SETTINGS}.", folder.display())));
+    }
+    let text = read_text(&path)?;
+    Ok((v1::settings_from_text(&path, &text)?, text))
+}
+
+fn press_paths(folder: &Path) -> Result<Vec<PathBuf>, PlantRefusal> {
+    let presses = folder.join(PRESSES);
+    if !presses.exists() {
+        return Ok(Vec::new());
+    }
+    let refuse = |error: std::io::Error| {
+        PlantRefusal::Folder(format!("The folder {} cannot be read: {error}.", presses.display()))
+    };
+    let mut paths = Vec::new();
+    for entry in fs::read_dir(&presses).map_err(refuse)? {
+        let path = entry.map_err(refuse)?.path();
+        let is_hidden = path.file_name().is_some_and(|name| name.to_string_lossy().starts_with('.'));
+        if !is_hidden && path.extension().is_some_and(|extension| extension == "ron") {
+            paths.push(path);
+        }
+    }
+    paths.sort();
+    Ok(paths)
+}
+
+fn read_press(path: &Path) -> Result<(Press, String), FileRefusal> {
+    let text = read_text(path)?;
+    let press = v1::press_from_text(path, &text)?;
+    if path.file_stem().is_none_or(|stem| stem != press.tag.as_str()) {
+        let why = format!("The file holds the press {:?}; a press file bears the tag of its press.", press.tag);
+        return Err(FileRefusal::whole(path, why));
+    }
+    Ok((press, text))
+}
+
+/// Reads press files, in the order given; many of them on as many threads as the machine has processors.
+fn read_all(paths: &[PathBuf]) -> Vec<Result<(Press, String), FileRefusal>> {
+    let threads = std::thread::available_parallelism().map_or(1, usize::from);
+    if paths.len() < FEW || threads < 2 {
+        return paths.iter().map(|path| read_press(path)).collect();
+    }
+    let share = paths.len().div_ceil(threads);
+    std::thread::scope(|scope| {
+        let readers: Vec<_> = paths
+            .chunks(share)
+            .map(|paths| scope.spawn(move || paths.iter().map(|path| read_press(path)).collect::<Vec<_>>()))
+            .collect();
+        readers.into_iter().flat_map(|reader| reader.join().expect("reading a press file does not panic")).collect()
+    })
+}

@@ -1,0 +1,196 @@
+//! Numbers, dates and names as files hold them: each is checked while it is read, so that a refusal knows its line and column.
+
+use calc::calendar::{Moment, parse_date};
+use calc::limits::{self, Limit};
+use jiff::civil::Date;
+use serde::de::Error;
+use serde::{Deserialize, Deserializer, Serialize, Serializer};
+
+/// Writes a whole number without a point, so that `182` stays `182`.
+fn write_thousandths<S: Serializer>(count: i64, serializer: S) -> Result<S::Ok, S::Error> {
+    if count % 1000 == 0 {
+        serializer.serialize_i64(count / 1000)
+    } else {
+        serializer.serialize_f64(count as f64 / 1000.0)
+    }
+}
+
+macro_rules! numbers {
+    ($($(#[$doc:meta])* $name:ident: $limit:expr;)*) => {$(
+        $(#[$doc])*
+        #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+        pub struct $name(pub i64);
+
+        impl $name {
+            const LIMIT: Limit = $limit;
+        }
+
+        impl Serialize for $name {
+            fn serialize<S: Serializer>(&self, serializer: S) -> Result<S::Ok, S::Error> {
+                write_thousandths(self.0, serializer)
+            }
+        }
+
+        impl<'de> Deserialize<'de> for $name {
+            fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
+                let value = f64::deserialize(deserializer)?;
+                Self::LIMIT.take_f64(value).map(Self).map_err(D::Error::custom)
+            }
+        }
+    )*};
+}
+
+numbers! {
+    /// A stopping time, ms.
+    StopMs: limits::STOPPING_TIME;
+    /// A response time, ms.
+    ResponseMs: limits::RESPONSE_TIME;
+    /// A wear allowance, ms.
+    WearMs: limits::WEAR_ALLOWANCE;
+    /// An opening time, ms.
+    OpeningMs: limits::OPENING_TIME;
+    /// A monitor setting, ms.
+    MonitorMs: limits::MONITOR_SETTING;
+    /// An installed distance, mm.
+    InstalledMm: limits::INSTALLED;
+    /// A tape uncertainty, mm.
+    TapeMm: limits::TAPE_UNCERTAINTY;
+    /// A detection capability, mm.
+    DetectionMm: limits::DETECTION;
+    /// A height, mm.
+    HeightMm: limits::HEIGHT;
+    /// An opening, mm.
+    OpeningMm: limits::OPENING;
+    /// A slot length, mm.
+    SlotMm: limits::SLOT_LENGTH;
+    /// A supplemental distance, mm.
+    SupplementMm: limits::SUPPLEMENT;
+    /// A crank angle, degrees.
+    AngleDeg: limits::ANGLE;
+    /// An angle of a field to the approach, degrees.
+    TiltDeg: limits::FIELD_ANGLE;
+    /// A speed, strokes a minute.
+    SpeedPerMin: limits::SPEED;
+    /// A die mass, kg.
+    DieKg: limits::DIE_MASS;
+    /// A counterbalance pressure, bar.
+    CounterbalanceBar: limits::COUNTERBALANCE;
+    /// An operating pressure, bar.
+    OperatingBar: limits::OPERATING_PRESSURE;
+    /// A stroke, mm.
+    StrokeMm: limits::STROKE;
+    /// A connecting rod, mm.
+    RodMm: limits::ROD;
+    /// A press force, kN.
+    ForceKn: limits::FORCE;
+}
+
+macro_rules! counts {
+    ($($(#[$doc:meta])* $name:ident: $limit:expr;)*) => {$(
+        $(#[$doc])*
+        #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+        pub struct $name(pub u32);
+
+        impl Serialize for $name {
+            fn serialize<S: Serializer>(&self, serializer: S) -> Result<S::Ok, S::Error> {
+                serializer.serialize_u32(self.0)
+            }
+        }
+
+        impl<'de> Deserialize<'de> for $name {
+            fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
+                let count = u32::deserialize(deserializer)?;
+                $limit.take(i64::from(count) * 1000).map_err(D::Error::custom)?;
+                Ok(Self(count))
+            }
+        }
+    )*};
+}
+
+counts! {
+    /// Engaging points of a clutch.
+    EngagingPoints: limits::ENGAGING_POINTS;
+    /// Months or weeks between two checks.
+    Every: limits::INTERVAL_MONTHS;
+    /// A share in per cent.
+    Share: limits::WARNING_SHARE;
+}
+
+/// A day, with or without a time of day.
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
+pub struct At(pub Moment);
+
+impl Serialize for At {
+    fn serialize<S: Serializer>(&self, serializer: S) -> Result<S::Ok, S::Error> {
+        serializer.collect_str(&self.0)
+    }
+}
+
+impl<'de> Deserialize<'de> for At {
+    fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
+        Moment::parse("Date", &String::deserialize(deserializer)?).map(Self).map_err(D::Error::custom)
+    }
+}
+
+/// A day.
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
+pub struct Day(pub Date);
+
+impl Serialize for Day {
+    fn serialize<S: Serializer>(&self, serializer: S) -> Result<S::Ok, S::Error> {
+        serializer.collect_str(&self.0)
+    }
+}
+
+impl<'de> Deserialize<'de> for Day {
+    fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
+        parse_date("Date", &String::deserialize(deserializer)?).map(Self).map_err(D::Error::custom)
+    }
+}
+
+/// A choice that a file holds by its name.
+pub trait Choice: Copy + 'static {
+    /// Every choice.
+    const EVERY: &'static [Self];
+    /// Its name in files.
+    fn name(self) -> &'static str;
+}
+
+macro_rules! choices {
+    ($($kind:ty),*) => {$(
+        impl Choice for $kind {
+            const EVERY: &'static [Self] = Self::ALL;
+            fn name(self) -> &'static str { self.key() }
+        }
+    )*};
+}
+choices!(
+    calc::stop_test::BrakeState,
+    calc::stop_test::StopPath,
+    calc::stop_test::Valves,
+    calc::stop_test::ClockStart,
+    calc::reading::ReadingPlace,
+    calc::press::EventKind,
+    calc::rules::RuleSetId,
+    calc::value_taken::ValueTaken
+);
+
+/// A choice by its name.
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
+pub struct Named<T>(pub T);
+
+impl<T: Choice> Serialize for Named<T> {
+    fn serialize<S: Serializer>(&self, serializer: S) -> Result<S::Ok, S::Error> {
+        serializer.serialize_str(self.0.name())
+    }
+}
+
+impl<'de, T: Choice> Deserialize<'de> for Named<T> {
+    fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
+        let name = String::deserialize(deserializer)?;
+        T::EVERY.iter().copied().find(|choice| choice.name() == name).map(Self).ok_or_else(|| {
+            let names: Vec<&str> = T::EVERY.iter().map(|choice| choice.name()).collect();
+            D::Error::custom(format!("{name:?} is not known here; it must be one of {}", names.join(", ")))
+        })
+    }
+}
