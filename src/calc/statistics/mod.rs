@@ -31,6 +31,7 @@ pub use step_change::{
     cusum, ewma,
 };
 pub use student_t::student_t_two_sided;
+pub(crate) use student_t::student_t_upper_quantile;
 pub use summary::Summary;
 pub use tolerance::{
     COUNT_MAX, SHARE_LEAST, SHARE_MAX, confidence_of_greatest, tolerance_factor_one_sided, upper_tolerance_bound,
