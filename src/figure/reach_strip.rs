@@ -113,7 +113,7 @@ pub fn reach_strip(input: &StripInput, width: f32, fonts: &Fonts) -> Drawing {
     let scale = Scale::new((0.0, left), (widest.to_f64().max(1.0), right));
     let top = 6.5;
     let bottom = top + BAND;
-    let mut drawing = Drawing::new(width, bottom + 12.5);
+    let mut drawing = Drawing::new(width, bottom + 8.0);
     drawing.text(at(left, 4.0), "hazard", TEXT, Anchor::Start, Role::Faint);
 
     let mut from = Length::ZERO;
@@ -137,7 +137,8 @@ pub fn reach_strip(input: &StripInput, width: f32, fonts: &Fonts) -> Drawing {
         }
         from = from + part.length;
     }
-    draw_outer_labels(&mut drawing, &labels, left, right, bottom);
+    let rows = draw_outer_labels(&mut drawing, &labels, left, right, bottom);
+    drawing.height += 4.2 * (rows as f32 - 1.0);
     let required_at = scale.place(input.required.to_f64());
     if let Some(installed) = input.installed {
         let installed_at = scale.place(installed.to_f64());
@@ -163,8 +164,14 @@ pub fn reach_strip(input: &StripInput, width: f32, fonts: &Fonts) -> Drawing {
     drawing
 }
 
-/// Labels of parts too narrow to hold them, below the band with leaders, on two rows where one is too short.
-fn draw_outer_labels(drawing: &mut Drawing, labels: &[(f32, f32, String)], left: f32, right: f32, bottom: f32) {
+/// Labels of parts too narrow to hold them, below the band with leaders, on two rows where one is too short. Gives the rows.
+fn draw_outer_labels(
+    drawing: &mut Drawing,
+    labels: &[(f32, f32, String)],
+    left: f32,
+    right: f32,
+    bottom: f32,
+) -> usize {
     let total: f32 = labels.iter().map(|label| label.1 + 3.0).sum();
     let rows = if total <= right - left { 1 } else { 2 };
     for row in 0..rows {
@@ -177,6 +184,7 @@ fn draw_outer_labels(drawing: &mut Drawing, labels: &[(f32, f32, String)], left:
             drawing.text(at(x, y), &label.2, TEXT, Anchor::Middle, Role::Ink);
         }
     }
+    rows
 }
 
 /// The two distances above the band, moved apart where they would run into each other or out of the sheet.

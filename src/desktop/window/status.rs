@@ -54,20 +54,24 @@ pub fn status_ui(ui: &mut Ui, messages: &Messages, history: Option<&History>, gi
             }
         });
     }
-    ui.with_layout(egui::Layout::right_to_left(egui::Align::Min), |ui| {
-        let state = match history {
-            None => "no plant open",
-            Some(history) if history.is_dirty() => "unsaved changes",
-            Some(_) if given.is_sample => "a copy of the invented samples",
-            Some(_) => "saved",
-        };
-        ui.label(RichText::new(state).size(12.5).color(theme::colour(ui.ctx(), Role::Ink)));
-        ui.with_layout(egui::Layout::left_to_right(egui::Align::Min).with_main_wrap(true), |ui| {
-            let words = match &messages.once {
-                Some(once) => format!("{CAUTION} {once}"),
-                None => CAUTION.to_owned(),
-            };
+    let state = match history {
+        None => "no plant open",
+        Some(history) if history.is_dirty() => "unsaved changes",
+        Some(_) if given.is_sample => "a copy of the invented samples",
+        Some(_) => "saved",
+    };
+    let words = match &messages.once {
+        Some(once) => format!("{CAUTION} {once}"),
+        None => CAUTION.to_owned(),
+    };
+    const STATE_WIDTH: f32 = 190.0;
+    ui.horizontal_top(|ui| {
+        ui.allocate_ui(egui::vec2(ui.available_width() - STATE_WIDTH, 0.0), |ui| {
+            ui.set_width(ui.available_width());
             ui.add(egui::Label::new(RichText::new(words).size(11.5).color(faint)).wrap());
+        });
+        ui.with_layout(egui::Layout::right_to_left(egui::Align::Min), |ui| {
+            ui.label(RichText::new(state).size(12.5).color(theme::colour(ui.ctx(), Role::Ink)));
         });
     });
 }
