@@ -88,6 +88,25 @@ pub fn open_press_file(path: &Path) -> Result<(PlantSettings, Press), PlantRefus
     Ok((open_settings(folder)?.0, press))
 }
 
+/// Changes one press file on disk: reads it, lets `edit` change the press, and saves it whole or not at all.
+///
+/// # Errors
+/// As [`open_press_file`] and [`save_press`], or what `edit` refuses; the file is then as it was.
+pub fn edit_press_file(
+    path: &Path,
+    edit: impl FnOnce(&mut Press) -> Result<(), String>,
+) -> Result<Press, PlantRefusal> {
+    let (_, mut press) = open_press_file(path)?;
+    let text = read_text(path)?;
+    let tag = press.tag.clone();
+    edit(&mut press).map_err(PlantRefusal::Folder)?;
+    let absolute = std::path::absolute(path).unwrap_or_else(|_| path.into());
+    let folder = absolute.parent().and_then(Path::parent).unwrap_or(Path::new("."));
+    let mut known = Known { settings: None, presses: BTreeMap::from([(tag, text)]) };
+    save_press(folder, &press, None, &mut known)?;
+    Ok(press)
+}
+
 /// Makes a new plant folder.
 ///
 /// # Errors
