@@ -37,6 +37,16 @@ pub enum Command {
     Distance(Box<DistanceArgs>),
     /// Mean, spread and bounds of timed stops.
     Stops(StopsArgs),
+    /// How a press stands by its monthly readings: limits, drift, step, forecast.
+    Readings(ReadingsArgs),
+    /// Add one monthly reading to a press file.
+    AddReading(AddReadingArgs),
+    /// Add the readings of a CSV file to a press file, all or none.
+    ImportReadings(ImportReadingsArgs),
+    /// Write the readings of a press as CSV.
+    ExportReadings(ExportReadingsArgs),
+    /// What is due across a plant.
+    Due(DueArgs),
 }
 
 /// What `check` takes.
@@ -97,6 +107,96 @@ pub struct StopsArgs {
     /// Write JSON.
     #[arg(long)]
     pub json: bool,
+}
+
+/// What `readings` takes.
+#[derive(Args, Debug)]
+pub struct ReadingsArgs {
+    /// The press file, in the presses folder of its plant.
+    #[arg(value_name = "PRESS-FILE")]
+    pub press: PathBuf,
+    /// Write JSON.
+    #[arg(long)]
+    pub json: bool,
+    /// Take this day for today.
+    #[arg(long, value_parser = date, value_name = "DATE")]
+    pub on: Option<Date>,
+}
+
+/// What `add-reading` takes.
+#[derive(Args, Debug)]
+pub struct AddReadingArgs {
+    /// The press file, in the presses folder of its plant.
+    #[arg(value_name = "PRESS-FILE")]
+    pub press: PathBuf,
+    /// The day, with or without a time of day: 2026-12-01, "2026-12-01 14:30".
+    #[arg(long)]
+    pub date: String,
+    /// The timed stops, ms, parted by commas (or by ; where the comma is the decimal mark).
+    #[arg(long, value_name = "A,B,C", allow_hyphen_values = true)]
+    pub stops_ms: String,
+    /// Another speed than the reference condition's, strokes a minute.
+    #[arg(long, value_name = "X")]
+    pub speed: Option<String>,
+    /// Who took it.
+    #[arg(long)]
+    pub by: Option<String>,
+    /// Another instrument than the latest reading's.
+    #[arg(long)]
+    pub instrument: Option<String>,
+    /// Its serial number.
+    #[arg(long, requires = "instrument")]
+    pub serial: Option<String>,
+}
+
+/// What `import-readings` takes.
+#[derive(Args, Debug)]
+pub struct ImportReadingsArgs {
+    /// The press file, in the presses folder of its plant.
+    #[arg(value_name = "PRESS-FILE")]
+    pub press: PathBuf,
+    /// One row a stop; the columns date and stop_ms must be there.
+    #[arg(value_name = "FILE.csv")]
+    pub csv: PathBuf,
+}
+
+/// What `export-readings` takes.
+#[derive(Args, Debug)]
+pub struct ExportReadingsArgs {
+    /// The press file, in the presses folder of its plant.
+    #[arg(value_name = "PRESS-FILE")]
+    pub press: PathBuf,
+}
+
+/// What `due` takes.
+#[derive(Args, Debug)]
+pub struct DueArgs {
+    /// The plant folder.
+    #[arg(value_name = "PLANT-FOLDER")]
+    pub plant: PathBuf,
+    /// Take this day for today.
+    #[arg(long, value_parser = date, value_name = "DATE")]
+    pub on: Option<Date>,
+    /// How far to look ahead.
+    #[arg(long, value_enum, default_value = "month")]
+    pub within: WithinArg,
+    /// Write the round list, with empty boxes to write in, as PDF.
+    #[arg(long, value_name = "FILE.pdf")]
+    pub out: Option<PathBuf>,
+    /// Write JSON.
+    #[arg(long)]
+    pub json: bool,
+}
+
+/// How far to look ahead.
+#[derive(Clone, Copy, PartialEq, Eq, Debug, ValueEnum)]
+pub enum WithinArg {
+    /// To the end of this week.
+    Week,
+    /// To the end of this month.
+    Month,
+    /// Twelve months.
+    Year,
 }
 
 /// What `distance` takes. Parts of the response that are not given are taken as inside the stopping time.

@@ -3,8 +3,10 @@
 mod args;
 mod check;
 mod distance;
+mod due;
 mod json;
 mod outcome;
+mod readings;
 mod record;
 mod stops;
 mod window;
@@ -32,6 +34,11 @@ pub fn run(command: Command) -> Outcome {
         Command::Record(args) => record::record(&args),
         Command::Distance(args) => distance::distance(&args),
         Command::Stops(args) => stops::stops(&args),
+        Command::Readings(args) => readings::readings(&args),
+        Command::AddReading(args) => readings::add(&args),
+        Command::ImportReadings(args) => readings::import(&args),
+        Command::ExportReadings(args) => readings::export(&args),
+        Command::Due(args) => due::due(&args),
     }
 }
 
