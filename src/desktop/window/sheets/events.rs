@@ -107,11 +107,10 @@ fn kind_ui(ui: &mut egui::Ui, form: &Form<'_>, draft: &mut EventDraft) {
     let shown = draft.kind.map_or("what happened", EventKind::words);
     let list = egui::ComboBox::from_id_salt(form.owner.with("event-kind")).width(190.0).height(400.0);
     let response = list.selected_text(shown).show_ui(ui, |ui| {
-        for kind in EventKind::ALL {
-            ui.selectable_value(&mut draft.kind, Some(*kind), kind.words());
-        }
+        let choose = |kind: &EventKind| ui.selectable_value(&mut draft.kind, Some(*kind), kind.words()).clicked();
+        EventKind::ALL.iter().map(choose).fold(false, |any, one| any | one)
     });
-    name_list(ui, &response.response, "What happened");
+    name_list(ui, &response.response, "What happened", response.inner == Some(true));
 }
 
 fn safeguard_ui(ui: &mut egui::Ui, press: &Press, form: &Form<'_>, draft: &mut EventDraft) {
@@ -124,16 +123,21 @@ fn safeguard_ui(ui: &mut egui::Ui, press: &Press, form: &Form<'_>, draft: &mut E
     };
     ui.add_enabled_ui(is_of_one, |ui| {
         let response = list.selected_text(shown).show_ui(ui, |ui| {
-            for safeguard in &press.safeguards {
-                ui.selectable_value(&mut draft.safeguard, Some(safeguard.name.clone()), &safeguard.name);
-            }
+            let choose = |safeguard: &Safeguard| {
+                let name = &safeguard.name;
+                ui.selectable_value(&mut draft.safeguard, Some(name.clone()), name).clicked()
+            };
+            press.safeguards.iter().map(choose).fold(false, |any, one| any | one)
         });
-        name_list(ui, &response.response, "Safeguard it happened to");
+        name_list(ui, &response.response, "Safeguard it happened to", response.inner == Some(true));
     });
 }
 
-/// Gives a list without a label before it a name for screen readers.
-fn name_list(ui: &egui::Ui, response: &egui::Response, name: &str) {
+/// Gives a list without a label before it a name for screen readers, and the keyboard back after a choice.
+fn name_list(ui: &egui::Ui, response: &egui::Response, name: &str, is_chosen: bool) {
+    if is_chosen {
+        response.request_focus();
+    }
     ui.ctx().accesskit_node_builder(response.id, |node| node.set_label(name));
 }
 

@@ -148,6 +148,10 @@ impl Form<'_> {
                     }
                 }
             });
+            if wished.is_some() {
+                // The list is gone with the choice in it; the keyboard goes back to where it was opened.
+                response.response.request_focus();
+            }
             response.response.labelled_by(label.id);
             wished
         })

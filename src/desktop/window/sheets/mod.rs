@@ -6,5 +6,5 @@ pub mod press;
 pub mod stop_tests;
 
 #[cfg(test)]
-#[path = "../../tests/fixture/mod.rs"]
+#[path = "../../tests/fixture/press.rs"]
 mod sample;

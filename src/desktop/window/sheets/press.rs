@@ -38,7 +38,7 @@ impl PressDrafts {
 }
 
 /// Width of one group of fields.
-const GROUP: f32 = 326.0;
+const GROUP: f32 = 320.0;
 const LABEL: f32 = 128.0;
 const FIELD: f32 = 178.0;
 
@@ -52,8 +52,9 @@ pub fn press_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut PressDrafts, 
             let PressDrafts { fields, awaits_points, event, .. } = drafts;
             let owner = Id::unique((cx.press.tag.as_str(), "press-fields"));
             let mut form = Form { owner, drafts: fields, label: LABEL, field: FIELD, refused: &mut refused };
-            ui.horizontal_wrapped(|ui| {
-                ui.spacing_mut().item_spacing = vec2(36.0, 0.0);
+            ui.horizontal_top(|ui| {
+                ui.spacing_mut().item_spacing =
+                    vec2(((ui.available_width() - 3.0 * GROUP) / 2.0).clamp(16.0, 64.0), 0.0);
                 group_ui(ui, |ui| identity_ui(ui, cx, &mut form, wishes));
                 group_ui(ui, |ui| build_ui(ui, cx, &mut form, awaits_points, wishes));
                 group_ui(ui, |ui| use_ui(ui, cx, &mut form, wishes));
@@ -66,7 +67,7 @@ pub fn press_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut PressDrafts, 
 }
 
 fn group_ui(ui: &mut egui::Ui, content: impl FnOnce(&mut egui::Ui)) {
-    ui.allocate_ui_with_layout(vec2(GROUP, 0.0), egui::Layout::top_down(egui::Align::Min), |ui| {
+    ui.vertical(|ui| {
         ui.set_width(GROUP);
         ui.spacing_mut().item_spacing = vec2(8.0, 2.0);
         content(ui);

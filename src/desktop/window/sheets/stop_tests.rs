@@ -53,7 +53,7 @@ impl StopTestsDrafts {
             self.fields.clear();
             self.tests = tests;
         }
-        self.grid.chosen = self.grid.chosen.min(tests.saturating_sub(1));
+        self.grid.follow(tests);
     }
 }
 
@@ -148,8 +148,10 @@ fn actions_ui(
         }
         ui.add_space(12.0);
         let words = match shown {
-            Some(safeguard) => format!("What governs is told for {}, {}.", safeguard.name, safeguard.stop_path.words()),
-            None => "The press has no safeguard yet, so none of the tests governs.".into(),
+            Some(safeguard) => {
+                format!("Seen from the {}, which calls for the {}.", safeguard.name, safeguard.stop_path.words())
+            }
+            None => "The press has no safeguard yet, so no test governs.".into(),
         };
         caption(ui, words);
     });

@@ -4,7 +4,7 @@ use calc::in_force::tests_in_force;
 use calc::plant_settings::PlantSettings;
 use calc::press::Press;
 use calc::round::{Towards, time_text};
-use calc::stop_test::{ClockStart, Condition, Instrument, StopPath, StopTest};
+use calc::stop_test::{ClockStart, Condition, StopPath, StopTest, Valves};
 use calc::units::Time;
 use calc::value_taken::{ValueTaken, summary_ms};
 use calc::verdict::Assessment;
@@ -15,10 +15,12 @@ pub const MOST_STOPS: usize = 200;
 /// One row of the grid.
 #[derive(Clone, PartialEq, Debug)]
 pub struct Row {
-    /// The condition in one line: "90°, 60 strokes/min, 450 kg die".
+    /// What is set at the press: "90°, 60 strokes/min".
     pub title: String,
-    /// The rest of the condition, the day, and why the test does not count where it does not.
+    /// The rest of the condition.
     pub detail: String,
+    /// The day.
+    pub day: String,
     /// Whether it counts.
     pub standing: Standing,
     /// The figures of its stops.
@@ -96,23 +98,21 @@ pub fn rows(press: &Press, settings: &PlantSettings, shown: Option<(StopPath, &A
             if let Some(governing) = governing.filter(|governing| governing.test == index) {
                 figures.taken = Some((governing.taken, governing.value));
             }
-            Row { title: title(&test.condition), detail: detail(test), standing, figures }
+            let day = test.at.date.to_string();
+            Row { title: title(&test.condition), detail: detail(&test.condition), day, standing, figures }
         })
         .collect()
 }
 
 /// The first half of a condition: what is set at the press.
 pub fn title(condition: &Condition) -> String {
-    format!("{}°, {}, {} die", condition.angle.digits(), condition.speed, condition.upper_die)
+    let valves =
+        if condition.valves == Valves::Both { String::new() } else { format!(", {}", condition.valves.words()) };
+    format!("{}°, {}{valves}", condition.angle.digits(), condition.speed)
 }
 
-fn detail(test: &StopTest) -> String {
-    let condition = &test.condition;
-    let mut words = format!("{}, {} brake, {}", test.at.date, condition.brake.words(), condition.path.words());
-    if condition.valves != calc::stop_test::Valves::Both {
-        words = format!("{words}, {}", condition.valves.words());
-    }
-    words
+fn detail(condition: &Condition) -> String {
+    format!("{} die, {}, {}", condition.upper_die, condition.brake.words(), condition.path.words())
 }
 
 fn standings(press: &Press, path: Option<StopPath>, governing: Option<usize>) -> Vec<Standing> {
@@ -167,11 +167,6 @@ pub fn clock_words(clock_start: ClockStart) -> &'static str {
         ClockStart::ControlInput => "The clock saw control and brake. Device and interface are added.",
         ClockStart::ValveCurrent => "The clock saw the brake alone. Device, interface and control are added.",
     }
-}
-
-/// Whether nothing at all is said of an instrument.
-pub fn is_unnamed(instrument: &Instrument) -> bool {
-    instrument.name.trim().is_empty() && instrument.serial.trim().is_empty()
 }
 
 /// A time for a column of figures: one decimal always, without the unit.
