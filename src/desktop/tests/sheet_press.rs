@@ -157,9 +157,9 @@ fn an_event_is_written_down_by_keyboard_and_says_what_it_puts_to_retime() {
 fn the_monitor_is_compared_with_what_the_safeguards_allow() {
     // 428 mm / 2000 mm/s - 12 ms of the device = 202 ms.
     let mut harness = sheet(press());
-    harness.get_by_label_contains("Front curtain allows at most 202 ms: 2 ms to spare");
+    harness.get_by_label_contains("Front curtain allows at most 202 ms,\n2 ms more than set");
     fill(&mut harness, "Monitor setting", "210");
-    harness.get_by_label_contains("Set too long: Front curtain allows at most 202 ms, 8 ms less");
+    harness.get_by_label_contains("Set too long. Front curtain allows at most 202 ms,\n8 ms less than set");
 }
 
 #[test]

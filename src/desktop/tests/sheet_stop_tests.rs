@@ -12,6 +12,8 @@ use egui_kittest::kittest::Queryable;
 use fixture::bench::{Bench, bench, enter, field, press_key, tab_to, type_in};
 use fixture::{TEN, ms, pictures, press, stop_test};
 
+const GOVERNING: &str = "90°, 60 strokes/min, 450 kg die, warm, normal stop, 2026-10-05, governs";
+
 type Sheet = Harness<'static, Bench<StopTestsDrafts>>;
 
 fn sheet(press: Press) -> Sheet {
@@ -215,12 +217,15 @@ fn every_theme_and_size_shows_the_sheet() {
             many.stop_tests[1].condition.speed = Rate::per_min(60);
             let mut harness = bench(many, [width, height], is_dark, stop_tests_ui);
             harness.run();
-            harness.get_by_label_contains("2026-10-05, governs").focus();
+            harness.get_by_role_and_label(egui::Role::RadioButton, GOVERNING).focus();
             harness.run();
             press_key(&mut harness, Key::Space);
             let picture = harness.render().unwrap();
             assert_eq!(picture.dimensions(), (width as u32, height as u32));
             pictures::keep(&format!("stop-tests-{width}-{theme}"), &picture);
+            let mut first = bench(Press { stop_tests: Vec::new(), ..press() }, [width, height], is_dark, stop_tests_ui);
+            first.run();
+            pictures::keep(&format!("first-test-{width}-{theme}"), &first.render().unwrap());
         }
     }
 }

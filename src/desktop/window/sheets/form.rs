@@ -145,6 +145,8 @@ impl Form<'_> {
                 for one in all {
                     if ui.selectable_label(chosen == Some(*one), words(*one)).clicked() && chosen != Some(*one) {
                         wished = Some(*one);
+                        // A click closes the list by itself, the keyboard does not.
+                        ui.close();
                     }
                 }
             });

@@ -32,6 +32,7 @@ impl GridDrafts {
     /// Chooses a test and puts the keyboard into its first empty cell.
     pub fn begin(&mut self, press: &Press, test: usize, stops: usize) {
         self.pending = Some(test);
+        self.block.clear();
         self.cells.focus(cell_id(press, (test, stops)));
     }
 
@@ -64,7 +65,8 @@ impl GridDrafts {
 const ACROSS: usize = 10;
 const LINE: f32 = 29.0;
 const HEAD: f32 = 58.0;
-const LEAST_ROW: f32 = 60.0;
+// Room for two lines of stops, so that no row grows when the tenth stop is entered.
+const LEAST_ROW: f32 = 2.0 * LINE + 12.0;
 
 /// Width of each part of a row.
 #[derive(Clone, Copy)]
@@ -173,7 +175,7 @@ fn row_ui(
     let cell_rect = |cell: usize| {
         let corner = pos2(
             widths.stops_from(rect.left()) + (cell % ACROSS) as f32 * widths.cell,
-            rect.top() + 6.0 + (cell / ACROSS) as f32 * LINE,
+            rect.top() + 7.0 + (cell / ACROSS) as f32 * LINE,
         );
         Rect::from_min_size(corner, vec2(widths.cell - 3.0, LINE - 3.0))
     };
@@ -239,7 +241,7 @@ fn title_ui(
     } else if response.hovered() {
         painter.rect_filled(rect.shrink(1.0), 2.0, visuals.widgets.hovered.weak_bg_fill.gamma_multiply(0.5));
     }
-    let inner = Rect::from_min_max(rect.min + vec2(12.0, 6.0), rect.max - vec2(4.0, 2.0));
+    let inner = Rect::from_min_max(rect.min + vec2(12.0, 8.0), rect.max - vec2(4.0, 2.0));
     within(ui, UiBuilder::new().max_rect(inner).layout(Layout::top_down(Align::Min)), |ui| {
         ui.spacing_mut().item_spacing.y = 1.0;
         let line = |ui: &mut egui::Ui, text: &str, font: FontId, colour| {
@@ -277,7 +279,7 @@ fn figures_ui(ui: &mut egui::Ui, row_rect: Rect, widths: Widths, row: &Row) {
     let is_faint = matches!(row.standing, Standing::Superseded(_));
     let mut from = widths.figures_from(row_rect.left());
     for ((text, (_, width)), place) in texts.iter().zip(FIGURES).zip(0..) {
-        let rect = Rect::from_min_size(pos2(from, row_rect.top() + 6.0), vec2(width - 4.0, LINE - 3.0));
+        let rect = Rect::from_min_size(pos2(from, row_rect.top() + 7.0), vec2(width - 4.0, LINE - 3.0));
         figure_ui(ui, rect, text, is_faint, place == 6 && row.standing == Standing::Governs);
         from += width;
     }

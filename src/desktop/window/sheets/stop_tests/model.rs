@@ -138,11 +138,11 @@ fn why_superseded(press: &Press, index: usize, in_force: &[usize]) -> String {
     let test = &press.stop_tests[index];
     let same = in_force.iter().map(|other| &press.stop_tests[*other]).find(|other| other.condition == test.condition);
     if let Some(later) = same {
-        return format!("replaced by the test of {}", later.at);
+        return format!("replaced on {}", later.at);
     }
     let resets = press.events.iter().filter(|event| event.kind.resets_brake() && !test.at.is_surely_after(event.at));
     match resets.reduce(|one, other| if one.at.is_surely_after(other.at) { one } else { other }) {
-        Some(event) => format!("timed before: {} on {}", event.kind.words(), event.at.date),
+        Some(event) => format!("before {} on {}", event.kind.words(), event.at.date),
         None => "no longer in force".into(),
     }
 }
@@ -235,7 +235,7 @@ mod tests {
         let found = |press: &Press| standings(press, Some(StopPath::Normal), Some(1));
         assert_eq!(
             found(&press),
-            [Standing::Superseded("replaced by the test of 2026-11-20".into()), Standing::Governs, Standing::Counts]
+            [Standing::Superseded("replaced on 2026-11-20".into()), Standing::Governs, Standing::Counts]
         );
         press.stop_tests.push(stop_test("2026-11-25", 180, &[150; 10]));
         press.events.push(Event {
@@ -244,7 +244,7 @@ mod tests {
             safeguard: None,
             note: String::new(),
         });
-        let before = || Standing::Superseded("timed before: lining replaced on 2026-11-22".into());
+        let before = || Standing::Superseded("before lining replaced on 2026-11-22".into());
         assert_eq!(found(&press)[1..], [before(), before(), Standing::Counts]);
     }
 
