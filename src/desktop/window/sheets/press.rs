@@ -12,6 +12,7 @@ use figure::Role;
 
 use super::events::{EventDraft, events_ui};
 use super::form::{Form, ROW, fill_strip, keep_strip, label_ui};
+use crate::document::{Document, Unreadable};
 use crate::window::context::SheetContext;
 use crate::window::theme;
 use crate::window::widgets::{Commit, Drafts, FieldKind, caption, heading, length_field};
@@ -80,7 +81,7 @@ fn identity_ui(ui: &mut egui::Ui, cx: &SheetContext, form: &mut Form<'_>, wishes
     let press = cx.press;
     heading(ui, "Identity");
     let kind = FieldKind::words("Tag").wide(form.field);
-    let read = |text: &str| check_tag(text.trim()).map(|()| text.trim().to_owned());
+    let read = |text: &str| free_tag(cx.document, press, text.trim());
     if let Some(tag) = form.needed(ui, "tag", kind, &press.tag, read) {
         wishes.edit_press(press, "change tag", move |press| press.tag = tag);
     }
@@ -105,6 +106,18 @@ fn identity_ui(ui: &mut egui::Ui, cx: &SheetContext, form: &mut Form<'_>, wishes
     if let Some(conformity) = form.choice(ui, "ce-mark", "CE mark", chosen, conformity_words) {
         wishes.edit_press(press, "change CE mark", move |press| press.conformity = conformity);
     }
+}
+
+/// A tag that no other press bears, so that the refusal stands at the field and not after it.
+fn free_tag(document: &Document, press: &Press, tag: &str) -> Result<String, Refusal> {
+    check_tag(tag)?;
+    let is_borne = |other: &str| other != press.tag && other.eq_ignore_ascii_case(tag);
+    let is_file = |file: &Unreadable| file.path.file_stem().is_some_and(|stem| stem.eq_ignore_ascii_case(tag));
+    if document.presses.iter().any(|other| is_borne(&other.tag)) || document.unreadable.iter().any(is_file) {
+        let allowed = "one that no other press of the plant bears";
+        return Err(Refusal::new("Press tag", tag, allowed, "Choose another tag."));
+    }
+    Ok(tag.to_owned())
 }
 
 /// The clutches that a form offers.
@@ -303,5 +316,27 @@ const fn conformity_words(conformity: Option<Conformity>) -> &'static str {
         None => "not stated",
         Some(Conformity::CeMarked) => "yes",
         Some(Conformity::WithoutCe) => "no",
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::window::sheets::sample::{plant_settings, press};
+    use std::sync::Arc;
+
+    #[test]
+    fn a_tag_of_another_press_or_of_an_unreadable_file_is_refused() {
+        let mut other = press();
+        other.tag = "P-08".into();
+        let document = Document {
+            folder: None,
+            settings: plant_settings(),
+            presses: vec![Arc::new(press()), Arc::new(other)],
+            unreadable: vec![Unreadable { path: "presses/P-09.ron".into(), why: "cut short".into() }],
+        };
+        for (tag, is_free) in [("P-10", true), ("P-07", true), ("p-08", false), ("P-09", false), ("P 10", false)] {
+            assert_eq!(free_tag(&document, &press(), tag).is_ok(), is_free, "{tag}");
+        }
     }
 }

@@ -238,22 +238,27 @@ fn drawings_ui(
     });
 }
 
-/// The bars of the dial: every test that still stands and has stops, and the chosen one.
+/// The bars of the dial: the chosen test, and every test that still stands, has stops and was timed from the same clock start,
+/// since lengths of another clock are not to be compared.
 fn bars(press: &Press, rows: &[Row], chosen: usize) -> Vec<dial::Bar> {
-    rows.iter()
-        .enumerate()
-        .filter(|(index, row)| *index == chosen || !matches!(row.standing, Standing::Superseded(_)))
-        .filter_map(|(index, row)| {
+    (0..rows.len())
+        .filter(|index| is_drawn(press, rows, chosen, *index))
+        .filter_map(|index| {
             Some(dial::Bar {
                 test: index,
                 angle: press.stop_tests[index].condition.angle,
-                value: row.figures.taken?.1,
+                value: rows[index].figures.taken?.1,
                 stops: press.stop_tests[index].stops.clone(),
-                governs: row.standing == Standing::Governs,
+                governs: rows[index].standing == Standing::Governs,
                 chosen: index == chosen,
             })
         })
         .collect()
+}
+
+fn is_drawn(press: &Press, rows: &[Row], chosen: usize, index: usize) -> bool {
+    let stands = !matches!(rows[index].standing, Standing::Superseded(_));
+    index == chosen || (stands && press.stop_tests[index].clock_start == press.stop_tests[chosen].clock_start)
 }
 
 /// The allowed stopping time, where the chosen test was timed by the same clock start and stop path as the one that governs.
@@ -274,10 +279,14 @@ fn dial_words(press: &Press, shown: Option<(&Safeguard, &Assessment)>, chosen: u
     );
     if let Some((safeguard, _)) = shown {
         words.push_str(&if allowed_for(press, shown, chosen).is_some() {
-            format!(" Dashed ring: allowed for {}.", safeguard.name)
+            format!(" Dashed ring: allowed for the {}, {}.", safeguard.name, safeguard.stop_path.words())
         } else {
             " No allowed time is known for this clock start and stop path.".to_owned()
         });
+    }
+    let start = press.stop_tests[chosen].clock_start;
+    if press.stop_tests.iter().any(|test| test.clock_start != start) {
+        words.push_str(" Tests timed from another clock start are left out.");
     }
     words
 }

@@ -138,7 +138,7 @@ fn why_superseded(press: &Press, index: usize, in_force: &[usize]) -> String {
     let test = &press.stop_tests[index];
     let same = in_force.iter().map(|other| &press.stop_tests[*other]).find(|other| other.condition == test.condition);
     if let Some(later) = same {
-        return format!("replaced on {}", later.at);
+        return format!("replaced {}", later.at.date);
     }
     let resets = press.events.iter().filter(|event| event.kind.resets_brake() && !test.at.is_surely_after(event.at));
     match resets.reduce(|one, other| if one.at.is_surely_after(other.at) { one } else { other }) {
@@ -235,7 +235,7 @@ mod tests {
         let found = |press: &Press| standings(press, Some(StopPath::Normal), Some(1));
         assert_eq!(
             found(&press),
-            [Standing::Superseded("replaced on 2026-11-20".into()), Standing::Governs, Standing::Counts]
+            [Standing::Superseded("replaced 2026-11-20".into()), Standing::Governs, Standing::Counts]
         );
         press.stop_tests.push(stop_test("2026-11-25", 180, &[150; 10]));
         press.events.push(Event {
