@@ -116,7 +116,7 @@ fn a_bad_block_changes_nothing_and_lists_every_bad_entry() {
     harness.run();
     assert_eq!(harness.state().press(), &before);
     assert_eq!(harness.state().history.revision(), 0);
-    harness.get_by_label("Nothing was pasted.");
+    harness.get_by_label("Nothing was pasted, 2 refusals.");
     harness.get_by_label_contains("Entry 2. It is stop.");
     harness.get_by_label_contains("Entry 3. It is 20000 ms. It must be from 1 to 10000 ms.");
     assert_eq!(field(&harness, "Stop 11").value().as_deref().unwrap_or(""), "");
@@ -228,4 +228,29 @@ fn every_theme_and_size_shows_the_sheet() {
             pictures::keep(&format!("first-test-{width}-{theme}"), &first.render().unwrap());
         }
     }
+}
+
+#[test]
+fn many_stops_stand_in_lines_of_ten_and_a_short_safeguard_is_drawn() {
+    let mut many = press();
+    let stops: Vec<i64> = (0..23).map(|count| 205 + count * 7 % 11).collect();
+    many.stop_tests[0] = stop_test("2026-10-05 09:30", 300, &stops);
+    many.events.push(calc::press::Event {
+        at: fixture::at("2026-10-05 09:40"),
+        kind: calc::press::EventKind::NeedleTurned,
+        safeguard: None,
+        note: String::new(),
+    });
+    let mut harness = bench(many, [1680.0, 820.0], false, stop_tests_ui);
+    harness.run();
+    tab_to(&mut harness, "Stop 24", 40);
+    harness.event(Event::Paste("182\tstop\t20000\t183".into()));
+    harness.run();
+    let (tenth, eleventh) = (field(&harness, "Stop 10").rect(), field(&harness, "Stop 11").rect());
+    assert_eq!(eleventh.left(), field(&harness, "Stop 1").rect().left());
+    assert!(tenth.bottom() <= eleventh.top() && field(&harness, "Stop 21").rect().top() > eleventh.bottom());
+    let row =
+        "300°, 60 strokes/min, 450 kg die, warm, normal stop, 2026-10-05, before valve or needle turned on 2026-10-05";
+    harness.get_by_label(row);
+    pictures::keep("stop-tests-many", &harness.render().unwrap());
 }

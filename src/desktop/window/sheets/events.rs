@@ -66,7 +66,7 @@ fn entry_ui(ui: &mut egui::Ui, press: &Press, form: &mut Form<'_>, draft: &mut E
         ui.set_min_height(ROW);
         let id = form.owner.with("event-at");
         let shown = draft.at.map_or_else(String::new, |at| at.to_string());
-        let kind = FieldKind::words("Date, time").bare().wide(160.0).hint("year-month-day hh:mm");
+        let kind = FieldKind::words("Date, time").bare().wide(148.0).hint("year-month-day");
         match field_ui(ui, id, kind, &shown, form.drafts, |text| Moment::parse("Date of the event", text)) {
             Some(Commit::Set(at, _)) => draft.at = Some(at),
             Some(Commit::Cleared(_)) => draft.at = None,

@@ -50,7 +50,7 @@ pub fn press_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut PressDrafts, 
     ui.push_id((cx.press.tag.as_str(), "press"), |ui| {
         egui::ScrollArea::vertical().id_salt("sheet").auto_shrink(false).show(ui, |ui| {
             let mut refused = Vec::new();
-            let strip = keep_strip(ui);
+            let strip = keep_strip(ui, 2);
             let PressDrafts { fields, awaits_points, event, .. } = drafts;
             let owner = Id::unique((cx.press.tag.as_str(), "press-fields"));
             let group = ((ui.available_width() - 2.0 * BETWEEN) / 3.0).clamp(GROUP[0], GROUP[1]);

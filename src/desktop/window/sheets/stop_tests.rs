@@ -92,7 +92,7 @@ fn tests_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDrafts, 
             grid_ui(ui, cx.press, &rows, &mut drafts.grid, wishes);
             let mut refused = drafts.grid.refused(cx.press);
             ui.add_space(4.0);
-            let strip = keep_strip(ui);
+            let strip = keep_strip(ui, 3);
             let fields_width = if is_wide { left } else { left - GAP - SIDE };
             ui.horizontal_top(|ui| {
                 ui.spacing_mut().item_spacing.x = GAP;
@@ -189,7 +189,7 @@ fn edit_test(press: &Press, chosen: usize, edit: Edit, wishes: &mut Wishes) {
 fn first_test_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDrafts, wishes: &mut Wishes) {
     ui.label("No stop was timed on this press yet. State how the first test is made; its stops are typed afterwards.");
     let owner = Id::unique((cx.press.tag.as_str(), "first-stop-test"));
-    let strip = keep_strip(ui);
+    let strip = keep_strip(ui, 3);
     let mut refused = Vec::new();
     let mut form = Form { owner, drafts: &mut drafts.fields, label: LABEL, field: FIELD, refused: &mut refused };
     if let Some(edit) = fields::test_fields_ui(ui, &mut form, &drafts.first) {
@@ -245,7 +245,6 @@ fn bars(press: &Press, rows: &[Row], chosen: usize) -> Vec<dial::Bar> {
         .filter(|index| is_drawn(press, rows, chosen, *index))
         .filter_map(|index| {
             Some(dial::Bar {
-                test: index,
                 angle: press.stop_tests[index].condition.angle,
                 value: rows[index].figures.taken?.1,
                 stops: press.stop_tests[index].stops.clone(),

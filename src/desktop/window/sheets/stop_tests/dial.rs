@@ -12,8 +12,6 @@ use super::ink::Ink;
 /// One test on the dial.
 #[derive(Clone, PartialEq, Debug)]
 pub struct Bar {
-    /// Its place in the press's list.
-    pub test: usize,
     /// Crank angle of the stop command.
     pub angle: Angle,
     /// The value taken forward.
@@ -197,14 +195,7 @@ mod tests {
     use super::*;
 
     fn bar(angle: i64) -> Bar {
-        Bar {
-            test: 0,
-            angle: Angle::deg(angle),
-            value: Time::ms(180),
-            stops: Vec::new(),
-            governs: false,
-            chosen: false,
-        }
+        Bar { angle: Angle::deg(angle), value: Time::ms(180), stops: Vec::new(), governs: false, chosen: false }
     }
 
     #[test]

@@ -150,7 +150,6 @@ fn head_ui(ui: &mut egui::Ui, widths: Widths) {
     ui.painter().hline(rect.x_range(), rect.bottom(), Stroke::new(1.0, ui.visuals().weak_text_color()));
 }
 
-#[allow(clippy::too_many_arguments)]
 fn row_ui(
     ui: &mut egui::Ui,
     widths: Widths,
@@ -208,7 +207,6 @@ fn cell_id(press: &Press, (test, cell): (usize, usize)) -> Id {
 }
 
 /// The condition, which is also the button that chooses the row. Tells whether it was pressed.
-#[allow(clippy::too_many_arguments)]
 fn title_ui(
     ui: &mut egui::Ui,
     row_rect: Rect,
@@ -372,7 +370,9 @@ fn take_block(press: &Press, (test, cell): (usize, usize), text: &str, drafts: &
             set_stops(press, (test, cell), stops, label, wishes);
         }
         Err(refused) => {
-            drafts.block = std::iter::once("Nothing was pasted.".to_owned()).chain(refused).collect();
+            let counted =
+                if refused.len() == 1 { "1 refusal".to_owned() } else { format!("{} refusals", refused.len()) };
+            drafts.block = std::iter::once(format!("Nothing was pasted, {counted}.")).chain(refused).collect();
         }
     }
 }
