@@ -8,7 +8,7 @@ pub mod safeguards;
 pub mod stop_tests;
 
 #[cfg(test)]
-#[path = "../../tests/fixture/mod.rs"]
+#[path = "../../tests/fixture/press.rs"]
 mod sample;
 
 use egui::Ui;
