@@ -77,7 +77,7 @@ pub fn stop_tests(flow: &mut Flow, input: &RecordInput, assessments: &[Assessmen
         |index: usize| assessments.iter().any(|one| one.governing.is_some_and(|governing| governing.test == index));
     for (index, test) in press.stop_tests.iter().enumerate() {
         let state = match (governs(index), in_force.contains(&index)) {
-            (true, _) => "; decides",
+            (true, _) => "; governs",
             (false, true) => "",
             (false, false) => "; superseded or overtaken",
         };

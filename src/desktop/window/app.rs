@@ -12,6 +12,7 @@ use super::commands::Command;
 use super::context::SheetContext;
 use super::dialogs::{self, Dialog, Then};
 use super::jobs::Jobs;
+use super::overview::{OverviewDraft, overview_ui};
 use super::sheets::{Sheet, SheetDrafts};
 use super::wishes::{Wish, Wishes};
 use super::{header, press_list, status, theme};
@@ -39,6 +40,8 @@ pub struct ViewState {
     pub press: Option<String>,
     /// The safeguard of the reach strip, by place; the gravest where none was chosen.
     pub safeguard: Option<usize>,
+    /// Whether every press is shown in one table in place of one press.
+    pub is_overview: bool,
     /// The shown sheet.
     pub sheet: Sheet,
     /// The unit of lengths.
@@ -60,6 +63,7 @@ pub struct App {
     results: Results,
     view: ViewState,
     drafts: SheetDrafts,
+    overview: OverviewDraft,
     dialog: Option<Dialog>,
     jobs: Jobs,
     messages: status::Messages,
@@ -77,6 +81,7 @@ impl App {
             view: ViewState {
                 press: None,
                 safeguard: None,
+                is_overview: false,
                 sheet: Sheet::StopTests,
                 unit: LengthUnit::Millimetre,
                 is_dark: false,
@@ -85,6 +90,7 @@ impl App {
                 focus_find: false,
             },
             drafts: SheetDrafts::default(),
+            overview: OverviewDraft::default(),
             dialog: None,
             jobs: Jobs::default(),
         };
@@ -127,6 +133,7 @@ impl App {
     }
 
     fn show_press(&mut self, tag: String) {
+        self.view.is_overview = false;
         if self.view.press.as_deref() != Some(&tag) {
             self.view.safeguard = None;
             // Drafts belong to the press whose fields they were typed into; their identities carry its tag, so they wait there.
@@ -233,8 +240,12 @@ impl App {
                 }
             }
             Wish::ShowPress(tag) => self.show_press(tag),
+            Wish::ShowOverview => self.view.is_overview = true,
             Wish::ShowSafeguard(place) => self.view.safeguard = Some(place),
-            Wish::ShowSheet(sheet) => self.view.sheet = sheet,
+            Wish::ShowSheet(sheet) => {
+                self.view.is_overview = false;
+                self.view.sheet = sheet;
+            }
             Wish::PrintRecord => self.print_record(),
             Wish::PrintRoundList(record, path) => {
                 self.messages.clear();
@@ -311,6 +322,7 @@ impl App {
             Command::Find => self.view.focus_find = true,
             Command::ShowSheet(place) => {
                 if let Some(sheet) = Sheet::ALL.get(place) {
+                    self.view.is_overview = false;
                     self.view.sheet = *sheet;
                 }
             }
@@ -318,14 +330,20 @@ impl App {
     }
 
     fn views(&mut self, ui: &mut Ui, wishes: &mut Wishes) {
-        let Self { given, open, results, view, drafts, messages, .. } = self;
+        let Self { given, open, results, view, drafts, overview, messages, .. } = self;
         let history = open.as_ref().map(|open| &open.history);
         Panel::bottom("status").show_separator_line(true).frame(panel_frame(6)).show(ui, |ui| {
             status::status_ui(ui, messages, history, given);
         });
-        Panel::left("presses").resizable(false).exact_size(252.0).frame(panel_frame(10)).show(ui, |ui| {
+        Panel::left("presses").resizable(false).exact_size(234.0).frame(panel_frame(10)).show(ui, |ui| {
             press_list::press_list_ui(ui, history, results, view, given.today, wishes);
         });
+        if let Some(history) = history.filter(|_| view.is_overview) {
+            CentralPanel::default().frame(panel_frame(14)).show(ui, |ui| {
+                overview_ui(ui, history.document(), results, overview, (view.unit, given.today), wishes);
+            });
+            return;
+        }
         let shown = history.and_then(|history| {
             let press = history.document().press(view.press.as_deref()?)?;
             let result = results.press(&press.tag)?;
@@ -348,9 +366,7 @@ impl App {
             header::header_ui(ui, &cx, view, history, wishes);
         });
         CentralPanel::default().frame(panel_frame(12)).show(ui, |ui| {
-            egui::ScrollArea::both().auto_shrink(false).id_salt((view.sheet.name(), &press.tag)).show(ui, |ui| {
-                view.sheet.ui(ui, &cx, drafts, wishes);
-            });
+            view.sheet.ui(ui, &cx, drafts, wishes);
         });
     }
 }

@@ -7,6 +7,7 @@ pub mod dialogs;
 pub mod drawing;
 mod header;
 mod jobs;
+mod overview;
 mod press_list;
 pub mod sheets;
 mod status;

@@ -56,9 +56,14 @@ pub fn press_list_ui(
         }
     });
     let Some(history) = history else { return };
-    if ui.button("Plant settings…").clicked() {
-        wishes.push(Wish::EditPlant);
-    }
+    ui.horizontal(|ui| {
+        if ui.button("Plant settings…").clicked() {
+            wishes.push(Wish::EditPlant);
+        }
+        if ui.selectable_label(view.is_overview, "All presses").clicked() {
+            wishes.push(Wish::ShowOverview);
+        }
+    });
     ui.separator();
     let find = ui.add(
         egui::TextEdit::singleline(&mut view.find)
@@ -95,7 +100,7 @@ pub fn press_list_ui(
         ui.spacing_mut().item_spacing.y = 1.0;
         for tag in &tags {
             if let Some(result) = results.press(tag) {
-                let is_shown = view.press.as_deref() == Some(tag);
+                let is_shown = !view.is_overview && view.press.as_deref() == Some(tag);
                 if entry_ui(ui, result, is_shown, view.unit, &history.document().settings, today) {
                     wishes.push(Wish::ShowPress((*tag).to_owned()));
                 }

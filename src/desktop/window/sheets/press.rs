@@ -50,7 +50,7 @@ pub fn press_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut PressDrafts, 
     ui.push_id((cx.press.tag.as_str(), "press"), |ui| {
         egui::ScrollArea::vertical().id_salt("sheet").auto_shrink(false).show(ui, |ui| {
             let mut refused = Vec::new();
-            let strip = keep_strip(ui, 2);
+            let strip = keep_strip(ui, 1);
             let PressDrafts { fields, awaits_points, event, .. } = drafts;
             let owner = Id::unique((cx.press.tag.as_str(), "press-fields"));
             let group = ((ui.available_width() - 2.0 * BETWEEN) / 3.0).clamp(GROUP[0], GROUP[1]);
@@ -334,6 +334,7 @@ mod tests {
             settings: plant_settings(),
             presses: vec![Arc::new(press()), Arc::new(other)],
             unreadable: vec![Unreadable { path: "presses/P-09.ron".into(), why: "cut short".into() }],
+            renamed: Vec::new(),
         };
         for (tag, is_free) in [("P-10", true), ("P-07", true), ("p-08", false), ("P-09", false), ("P 10", false)] {
             assert_eq!(free_tag(&document, &press(), tag).is_ok(), is_free, "{tag}");

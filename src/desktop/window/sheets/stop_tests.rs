@@ -41,10 +41,11 @@ pub struct StopTestsDrafts {
 
 impl StopTestsDrafts {
     /// What was typed for another press, or before tests came or went, belongs to no field of this one.
-    fn follow(&mut self, press: &Press) {
+    fn follow(&mut self, press: &Press, governing: Option<usize>) {
         let tests = press.stop_tests.len();
         if self.tag != press.tag {
             *self = Self { tag: press.tag.clone(), tests, ..Self::default() };
+            self.grid.chosen = governing.unwrap_or(tests.saturating_sub(1));
         }
         if self.tests != tests {
             if tests < self.tests {
@@ -65,7 +66,8 @@ const FIELD: f32 = 216.0;
 
 /// Draws the sheet.
 pub fn stop_tests_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDrafts, wishes: &mut Wishes) {
-    drafts.follow(cx.press);
+    let governing = cx.assessment().and_then(|assessment| assessment.governing);
+    drafts.follow(cx.press, governing.map(|governing| governing.test));
     ui.push_id((cx.press.tag.as_str(), "stop-tests"), |ui| {
         egui::ScrollArea::vertical().id_salt("sheet").auto_shrink(false).show(ui, |ui| {
             if cx.press.stop_tests.is_empty() {
@@ -92,7 +94,7 @@ fn tests_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDrafts, 
             grid_ui(ui, cx.press, &rows, &mut drafts.grid, wishes);
             let mut refused = drafts.grid.refused(cx.press);
             ui.add_space(4.0);
-            let strip = keep_strip(ui, 3);
+            let strip = keep_strip(ui, 1);
             let fields_width = if is_wide { left } else { left - GAP - SIDE };
             ui.horizontal_top(|ui| {
                 ui.spacing_mut().item_spacing.x = GAP;
@@ -189,7 +191,7 @@ fn edit_test(press: &Press, chosen: usize, edit: Edit, wishes: &mut Wishes) {
 fn first_test_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDrafts, wishes: &mut Wishes) {
     ui.label("No stop was timed on this press yet. State how the first test is made; its stops are typed afterwards.");
     let owner = Id::unique((cx.press.tag.as_str(), "first-stop-test"));
-    let strip = keep_strip(ui, 3);
+    let strip = keep_strip(ui, 1);
     let mut refused = Vec::new();
     let mut form = Form { owner, drafts: &mut drafts.fields, label: LABEL, field: FIELD, refused: &mut refused };
     if let Some(edit) = fields::test_fields_ui(ui, &mut form, &drafts.first) {

@@ -51,7 +51,10 @@ fn segments_or_list<T: Copy + PartialEq>(
         }
         ComboBox::from_id_salt(id).width(width).selected_text(shown).show_ui(ui, |ui| {
             for (choice, name) in options {
-                ui.selectable_value(&mut chosen, *choice, *name);
+                // The list does not close by itself after a choice by keyboard.
+                if ui.selectable_value(&mut chosen, *choice, *name).clicked() {
+                    ui.close();
+                }
             }
         });
     });

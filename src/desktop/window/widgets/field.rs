@@ -125,6 +125,9 @@ impl<'a> FieldKind<'a> {
     }
 }
 
+/// A field narrower than this keeps its room for digits.
+const NARROW: f32 = 60.0;
+
 /// An entry field. `committed` is the text of the stored value; `read` takes the typed text or refuses it.
 ///
 /// The identity must come from the data (tag of the press and name of the field), never from the position on the sheet.
@@ -148,6 +151,9 @@ pub fn field_ui<T>(
                 .id(id)
                 .desired_width(kind.width)
                 .hint_text(WidgetText::from(kind.hint).color(theme::colour(ui.ctx(), Role::Faint)));
+            if kind.width < NARROW {
+                edit = edit.margin(egui::Margin::symmetric(3, 4));
+            }
             if kind.is_figure {
                 edit = edit.align(egui::Align2::RIGHT_CENTER);
             }
@@ -303,5 +309,5 @@ pub fn moment_field(
     drafts: &mut Drafts,
 ) -> Option<Commit<Moment>> {
     let committed = current.map_or(String::new(), |moment| moment.to_string());
-    field_ui(ui, id, kind.hint("2026-11-03 14:30"), &committed, drafts, |text| Moment::parse(kind.label, text))
+    field_ui(ui, id, kind.hint("year-month-day"), &committed, drafts, |text| Moment::parse(kind.label, text))
 }

@@ -114,7 +114,11 @@ pub fn grid_ui(ui: &mut egui::Ui, press: &Press, rows: &[Row], drafts: &mut Grid
         ui.spacing_mut().item_spacing.y = 0.0;
         let widths = Widths::within(ui.available_width());
         head_ui(ui, widths);
-        for (index, row) in rows.iter().enumerate() {
+        // What counts stands above what has been superseded; within each the order of entry is kept, so that no row jumps while
+        // its stops are typed.
+        let is_superseded = |row: &Row| matches!(row.standing, Standing::Superseded(_));
+        let (superseded, counting): (Vec<_>, Vec<_>) = rows.iter().enumerate().partition(|(_, row)| is_superseded(row));
+        for (index, row) in counting.into_iter().chain(superseded) {
             row_ui(ui, widths, press, index, row, drafts, wishes);
         }
     });
