@@ -1,1 +1,3 @@
 //! What is used: the window and the command line.
+
+pub mod host;
