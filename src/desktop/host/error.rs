@@ -46,6 +46,13 @@ impl fmt::Display for HostError {
 
 impl std::error::Error for HostError {}
 
+impl HostError {
+    /// The window went without having been closed.
+    pub(super) fn destroyed() -> Self {
+        Self::Lost("another program destroyed it".to_owned())
+    }
+}
+
 /// Libraries the window system is loaded from at run time, and the Debian packages they are in.
 /// A name that begins like another one stands before it.
 const LIBRARIES: [(&str, &str); 9] = [

@@ -56,7 +56,7 @@ impl fmt::Display for RendererReport {
             RendererReason::GraphicsCard(Some(name)) => write!(f, " on {name}"),
             RendererReason::GraphicsCard(None) => Ok(()),
             RendererReason::SoftwareGl(name) => {
-                write!(f, ": there is no graphics card, OpenGL is {name}")
+                write!(f, ": OpenGL here is {name}, without a graphics card")
             }
             RendererReason::NoGl(Some(cause)) => {
                 write!(f, ": OpenGL could not be started ({cause})")
@@ -122,7 +122,7 @@ mod tests {
         let report = |renderer, reason| RendererReport { renderer, reason }.to_string();
         assert_eq!(
             report(Renderer::Cpu, RendererReason::SoftwareGl("llvmpipe".into())),
-            "Drawn by the processor: there is no graphics card, OpenGL is llvmpipe"
+            "Drawn by the processor: OpenGL here is llvmpipe, without a graphics card"
         );
         assert_eq!(
             report(Renderer::Cpu, RendererReason::NoGl(None)),

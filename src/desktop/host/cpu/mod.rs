@@ -204,6 +204,12 @@ impl ApplicationHandler<UserEvent> for CpuHost<'_, '_> {
         };
         match &event {
             WindowEvent::RedrawRequested => self.paint(event_loop),
+            // While the window is held here, only somebody else can have destroyed it.
+            WindowEvent::Destroyed => {
+                self.failure = Some(HostError::destroyed());
+                self.window = None;
+                event_loop.exit();
+            }
             // Windows shows a resized window only when it is drawn before this returns.
             WindowEvent::Resized(size)
                 if cfg!(target_os = "windows") && size.width > 0 && size.height > 0 =>

@@ -1,11 +1,16 @@
 //! The window drawn with OpenGL.
 
-use std::cell::RefCell;
+mod watch;
+
+use std::cell::{Cell, RefCell};
+use std::rc::Rc;
 
 use eframe::UserEvent;
 use egui::{Context, Ui, Visuals};
 use winit::event_loop::EventLoop;
 use winit::platform::run_on_demand::EventLoopExtRunOnDemand as _;
+
+use self::watch::Watch;
 
 use super::renderer::is_software;
 use super::start::{self, Start};
@@ -33,9 +38,10 @@ pub(super) fn run(
     offer: &Offer<'_>,
 ) -> Result<Outcome, HostError> {
     let not_used = RefCell::new(None);
+    let running = Rc::new(Cell::new(false));
     let ended = start::attempt(|start| {
         let create = |cc: &eframe::CreationContext<'_>| {
-            create(&cc.egui_ctx, choice, offer, start).map_err(|reason| {
+            create(&cc.egui_ctx, choice, offer, start, &running).map_err(|reason| {
                 let text = RendererReport {
                     renderer: Renderer::Cpu,
                     reason: reason.clone(),
@@ -47,8 +53,10 @@ pub(super) fn run(
         };
         let native = native_options(options);
         let name = &options.app_id;
-        let mut app = eframe::create_native(name, native, Box::new(create), event_loop);
-        event_loop.run_app_on_demand(&mut app)
+        let library = eframe::create_native(name, native, Box::new(create), event_loop);
+        let mut watch = Watch::new(library, Rc::clone(&running));
+        let ended = event_loop.run_app_on_demand(&mut watch);
+        (ended, watch.destroyed())
     });
     let opened = offer.borrow().is_none();
     journal::errors_only();
@@ -56,12 +64,13 @@ pub(super) fn run(
 
     if opened {
         return match (ended, cause) {
-            (Ok(Err(error)), _) => Err(HostError::Lost(error.to_string())),
             (Err(panic), _) => Err(HostError::NotOpened(panic)),
-            (Ok(Ok(())), Some(cause)) if cause.starts_with(FATAL) => {
+            (Ok((_, true)), _) => Err(HostError::destroyed()),
+            (Ok((Err(error), _)), _) => Err(HostError::Lost(error.to_string())),
+            (Ok((Ok(()), _)), Some(cause)) if cause.starts_with(FATAL) => {
                 Err(HostError::Lost(plain(&cause)))
             }
-            (Ok(Ok(())), _) => Ok(Outcome::Closed),
+            (Ok((Ok(()), _)), _) => Ok(Outcome::Closed),
         };
     }
     if let Some(reason) = not_used.take() {
@@ -69,8 +78,8 @@ pub(super) fn run(
     }
     let cause = match ended {
         Err(panic) => Some(panic),
-        Ok(Err(error)) => Some(error.to_string()),
-        Ok(Ok(())) => cause.map(|cause| plain(&cause)),
+        Ok((Err(error), _)) => Some(error.to_string()),
+        Ok((Ok(()), _)) => cause.map(|cause| plain(&cause)),
     };
     if choice == RendererChoice::Gl {
         return Err(HostError::NoOpenGl(cause));
@@ -99,6 +108,7 @@ fn create<'a>(
     choice: RendererChoice,
     offer: &Offer<'a>,
     start: &Start,
+    running: &Rc<Cell<bool>>,
 ) -> Result<Box<dyn eframe::App + 'a>, RendererReason> {
     let driver = journal::opengl_driver();
     journal::errors_only();
@@ -119,8 +129,11 @@ fn create<'a>(
             RendererChoice::Auto | RendererChoice::Cpu => RendererReason::GraphicsCard(driver),
         },
     };
+    let app = make(ctx, &report);
+    running.set(true);
     Ok(Box::new(GlApp {
-        app: make(ctx, &report),
+        app,
+        running: Rc::clone(running),
     }))
 }
 
@@ -139,6 +152,13 @@ fn native_options(options: &WindowOptions) -> eframe::NativeOptions {
 /// The app as the OpenGL library takes it.
 struct GlApp<'a> {
     app: Box<dyn WindowApp + 'a>,
+    running: Rc<Cell<bool>>,
+}
+
+impl Drop for GlApp<'_> {
+    fn drop(&mut self) {
+        self.running.set(false);
+    }
 }
 
 impl eframe::App for GlApp<'_> {
