@@ -6,7 +6,8 @@ use std::time::{Duration, Instant};
 
 use eframe::UserEvent;
 use egui::{
-    Context, Event, FullOutput, RawInput, ViewportCommand, ViewportEvent, ViewportId, ViewportInfo,
+    Context, Event, FullOutput, RawInput, Vec2, ViewportCommand, ViewportEvent, ViewportId,
+    ViewportInfo, vec2,
 };
 use egui_winit::ActionRequested;
 use painter::Painter;
@@ -50,7 +51,10 @@ impl Frame {
         proxy: EventLoopProxy<UserEvent>,
     ) -> Result<Self, HostError> {
         // Hidden until there is something to see; AccessKit has to be attached before as well.
-        let builder = options.viewport().with_visible(false);
+        let mut builder = options.viewport().with_visible(false);
+        if let Some(screen) = largest_screen(event_loop) {
+            builder = builder.with_inner_size(options.initial_size.min(screen));
+        }
         let window = egui_winit::create_window(ctx, event_loop, &builder)
             .map_err(|error| HostError::NotOpened(error.to_string()))?;
         let window = Arc::new(window);
@@ -73,6 +77,18 @@ impl Frame {
             state,
         })
     }
+}
+
+/// Size of the largest screen in points, each side for itself; none if no screen tells its size.
+fn largest_screen(event_loop: &ActiveEventLoop) -> Option<Vec2> {
+    event_loop
+        .available_monitors()
+        .map(|monitor| {
+            let size = monitor.size().to_logical::<f32>(monitor.scale_factor());
+            vec2(size.width, size.height)
+        })
+        .filter(|size| size.x > 0.0 && size.y > 0.0)
+        .reduce(Vec2::max)
 }
 
 pub(super) struct CpuWindow<'a> {
