@@ -85,8 +85,9 @@ type Offer<'a> = RefCell<Option<MakeApp<'a>>>;
 /// connection.
 ///
 /// # Errors
-/// Fails when no window can be opened, and when the connection to the window system or to the
-/// graphics card is lost. The error is a sentence for the user.
+/// Fails when no window can be opened, and when the window or the graphics card is lost. The error
+/// is a sentence for the user. When an X server ends while the window is open, its library ends
+/// the process by itself, with status 1.
 pub fn run<'a>(
     choice: RendererChoice,
     options: &WindowOptions,
@@ -111,6 +112,7 @@ pub fn run<'a>(
             }
         }
     };
+    journal::errors_only();
     cpu::run(&mut event_loop, options, reason, &offer)
 }
 

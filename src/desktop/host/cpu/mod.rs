@@ -198,8 +198,9 @@ impl ApplicationHandler<UserEvent> for CpuHost<'_, '_> {
         self.serve(event_loop);
     }
 
-    fn window_event(&mut self, event_loop: &ActiveEventLoop, _: WindowId, event: WindowEvent) {
-        let Some(window) = &mut self.window else {
+    fn window_event(&mut self, event_loop: &ActiveEventLoop, id: WindowId, event: WindowEvent) {
+        // The window of an attempt with OpenGL may still have its last events on the way.
+        let Some(window) = self.window.as_mut().filter(|window| window.id() == id) else {
             return;
         };
         match &event {

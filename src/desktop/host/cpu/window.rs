@@ -13,7 +13,7 @@ use egui_winit::ActionRequested;
 use painter::Painter;
 use winit::event::WindowEvent;
 use winit::event_loop::{ActiveEventLoop, EventLoopProxy, OwnedDisplayHandle};
-use winit::window::Window;
+use winit::window::{Window, WindowId};
 
 use crate::host::{HostError, WindowApp, WindowOptions, run_logic};
 
@@ -118,6 +118,10 @@ impl<'a> CpuWindow<'a> {
 
     pub(super) fn context(&self) -> &Context {
         &self.frame.ctx
+    }
+
+    pub(super) fn id(&self) -> WindowId {
+        self.frame.window.id()
     }
 
     pub(super) fn request_redraw(&self) {
