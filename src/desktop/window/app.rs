@@ -71,8 +71,7 @@ pub struct App {
 
 impl App {
     /// The application with a plant folder opened, or with the reason why it cannot be.
-    pub fn new(context: &Context, given: Given, folder: Option<&Path>) -> Self {
-        theme::install(context);
+    pub fn new(given: Given, folder: Option<&Path>) -> Self {
         let mut app = Self {
             messages: status::Messages::new(&given.renderer),
             given,
@@ -376,7 +375,15 @@ fn panel_frame(margin: i8) -> Frame {
 }
 
 impl WindowApp for App {
-    fn logic(&mut self, context: &Context) {
+    fn close_requested(&mut self, _context: &Context) -> bool {
+        if self.jobs.is_closing || !self.is_dirty() {
+            return true;
+        }
+        self.dialog = Some(Dialog::Unsaved(Then::Close));
+        false
+    }
+
+    fn logic(&mut self, _context: &Context) {
         if let Some(folder) = self.jobs.picked_folder() {
             match &mut self.dialog {
                 Some(dialog) => dialog.take_path(&folder),
@@ -385,10 +392,6 @@ impl WindowApp for App {
         }
         if self.jobs.dialog_failed() {
             self.messages.tell("No file dialog can be opened here. Type the path instead.".into());
-        }
-        if context.input(|input| input.viewport().close_requested()) && !self.jobs.is_closing && self.is_dirty() {
-            context.send_viewport_cmd(ViewportCommand::CancelClose);
-            self.dialog = Some(Dialog::Unsaved(Then::Close));
         }
         self.follow();
     }

@@ -49,7 +49,7 @@ impl Jobs {
             Err(TryRecvError::Disconnected) => None,
             Ok(answer) => answer,
         };
-        if answer.is_none() && (crate::host::dialog_failed() || began.elapsed() < TOO_QUICK) {
+        if answer.is_none() && (crate::host::journal::take_error("rfd").is_some() || began.elapsed() < TOO_QUICK) {
             self.has_failed = true;
         }
         self.picking = None;
