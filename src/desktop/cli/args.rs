@@ -100,9 +100,10 @@ pub enum PaperArg {
 
 /// What `stops` takes.
 #[derive(Args, Debug)]
+#[command(allow_negative_numbers = true)]
 pub struct StopsArgs {
     /// Stopping times in ms.
-    #[arg(required = true, allow_hyphen_values = true, value_name = "MS")]
+    #[arg(required = true, value_name = "MS")]
     pub stops: Vec<String>,
     /// Write JSON.
     #[arg(long)]
