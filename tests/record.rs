@@ -11,7 +11,7 @@ use jiff::civil::date;
 use record::{Paper, Record, RecordInput, RecordRefusal, SignOff, press_record};
 
 fn samples() -> (PlantSettings, Vec<Press>) {
-    let folder = Path::new(env!("CARGO_MANIFEST_DIR")).join("../../sample-presses");
+    let folder = Path::new(env!("CARGO_MANIFEST_DIR")).join("../sample-presses");
     let plant = plant::open(&folder).unwrap();
     (plant.settings, plant.presses.into_iter().map(|stored| stored.content.unwrap()).collect())
 }
