@@ -53,6 +53,9 @@ pub fn plot_ui(ui: &mut Ui, cx: &SheetContext, standing: &Standing) {
                         .style(LineStyle::dashed_loose()),
                 );
             }
+            let mut below: Option<(f64, bool)> = None;
+            let bounds = plot.plot_bounds();
+            let close = (bounds.max()[1] - bounds.min()[1]) * 0.09;
             for line in &standing.lines {
                 let role = match line.consequence {
                     Consequence::Warn => Role::Unproven,
