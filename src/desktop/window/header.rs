@@ -12,7 +12,7 @@ use super::context::SheetContext;
 use super::drawing::{drawing_ui, mark_ui, width_mm};
 use super::sheets::Sheet;
 use super::theme;
-use super::widgets::{choice_ui, empty_state, segments_ui};
+use super::widgets::{bare_choice_ui, empty_state, segments_ui};
 use super::wishes::{Wish, Wishes};
 use crate::document::History;
 
@@ -76,7 +76,7 @@ fn title_row_ui(ui: &mut Ui, cx: &SheetContext, view: &ViewState, history: &Hist
             }
             ui.separator();
             if let Some(rules) =
-                choice_ui::<RuleSetId>(ui, egui::Id::unique("rule set"), "", 190.0, cx.document.settings.rules)
+                bare_choice_ui::<RuleSetId>(ui, egui::Id::unique("rule set"), "Rule set", 190.0, cx.document.settings.rules)
             {
                 wishes.edit_plant("change the rule set", move |plant| plant.rules = rules);
             }
