@@ -100,9 +100,10 @@ pub enum PaperArg {
 
 /// What `stops` takes.
 #[derive(Args, Debug)]
+#[command(allow_negative_numbers = true)]
 pub struct StopsArgs {
     /// Stopping times in ms.
-    #[arg(required = true, allow_hyphen_values = true, value_name = "MS")]
+    #[arg(required = true, value_name = "MS")]
     pub stops: Vec<String>,
     /// Write JSON.
     #[arg(long)]
@@ -132,7 +133,7 @@ pub struct AddReadingArgs {
     /// The day, with or without a time of day: 2026-12-01, "2026-12-01 14:30".
     #[arg(long)]
     pub date: String,
-    /// The timed stops, ms, parted by commas (or by ; where the comma is the decimal mark).
+    /// The timed stops, ms, parted by commas (or by ; or spaces where the comma is the decimal mark).
     #[arg(long, value_name = "A,B,C", allow_hyphen_values = true)]
     pub stops_ms: String,
     /// Another speed than the reference condition's, strokes a minute.
@@ -204,16 +205,16 @@ pub enum WithinArg {
 #[command(allow_negative_numbers = true)]
 pub struct DistanceArgs {
     /// The rule set: us-1910-217, us-1910-217-h, ansi-b11-19, iso-13855-2010, iso-13855-2024, eu-press, east-asia.
-    #[arg(long, value_parser = rules, required = true)]
-    pub rules: Option<RuleSetId>,
+    #[arg(long, value_name = "NAME")]
+    pub rules: String,
     /// The safeguard: light-curtain, two-hand-control, two-hand-trip, interlocked-guard, separate-beams, horizontal-field, mat, guard-opening.
     #[arg(long, value_name = "KIND")]
     pub safeguard: String,
     /// One stopping time, ms.
     #[arg(long, value_name = "X", conflicts_with = "stops_ms")]
     pub stopping_ms: Option<String>,
-    /// Several timed stops, ms, parted by commas (or by ; where the comma is the decimal mark).
-    #[arg(long, value_name = "A,B,...")]
+    /// Several timed stops, ms, parted by commas (or by ; or spaces where the comma is the decimal mark).
+    #[arg(long, value_name = "A,B,...", allow_hyphen_values = true)]
     pub stops_ms: Option<String>,
     /// Response of the sensing device, ms.
     #[arg(long, value_name = "X")]
@@ -239,13 +240,13 @@ pub struct DistanceArgs {
     /// Height of the upper edge of a curtain, mm.
     #[arg(long, value_name = "X")]
     pub edge_height_mm: Option<String>,
-    /// Heights of separate beams, mm, parted by commas.
-    #[arg(long, value_name = "A,B,...")]
+    /// Heights of separate beams, mm, parted by commas (or by ; or spaces where the comma is the decimal mark).
+    #[arg(long, value_name = "A,B,...", allow_hyphen_values = true)]
     pub beam_heights_mm: Option<String>,
     /// Angle of a field to the approach, degrees; 0 lies along it.
     #[arg(long, value_name = "X")]
     pub field_angle_deg: Option<String>,
-    /// Opening in a guard, mm.
+    /// Opening in a fixed guard, or gap of an interlocked one before the stop is signalled, mm.
     #[arg(long, value_name = "X")]
     pub opening_mm: Option<String>,
     /// Its shape.
@@ -260,7 +261,7 @@ pub struct DistanceArgs {
     /// The actuators of two-hand control are shrouded.
     #[arg(long)]
     pub shrouded: bool,
-    /// Slowest speed of a two-hand trip.
+    /// Slowest speed of a press with two-hand trip, strokes a minute.
     #[arg(long, value_name = "X")]
     pub strokes_per_minute: Option<String>,
     /// Engaging points of a full-revolution clutch.

@@ -6,7 +6,7 @@ use serde_json::json;
 
 use super::args::{DueArgs, WithinArg};
 use super::outcome::columns;
-use super::{Outcome, today};
+use super::{Outcome, pdf_file, today};
 
 pub fn due(args: &DueArgs) -> Outcome {
     let mut outcome = Outcome::default();
@@ -50,7 +50,7 @@ pub fn due(args: &DueArgs) -> Outcome {
         let written = round_list(&input)
             .to_pdf()
             .map_err(|refusal| refusal.to_string())
-            .and_then(|pdf| plant::write_whole(path, &pdf).map_err(|refusal| refusal.to_string()));
+            .and_then(|pdf| pdf_file::write(path, &pdf));
         if let Err(refusal) = written {
             outcome.refuse(refusal);
         }

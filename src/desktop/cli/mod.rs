@@ -4,8 +4,10 @@ mod args;
 mod check;
 mod distance;
 mod due;
+mod figures;
 mod json;
 mod outcome;
+mod pdf_file;
 mod readings;
 mod record;
 mod stops;
@@ -42,7 +44,46 @@ pub fn run(command: Command) -> Outcome {
     }
 }
 
+/// What a command line does, given as one would type it; words are parted by white space.
+#[cfg(test)]
+fn run_line(line: &str) -> Outcome {
+    let cli = Cli::try_parse_from(std::iter::once("slidehalt").chain(line.split_whitespace()))
+        .unwrap_or_else(|error| panic!("{line}: {error}"));
+    run(cli.command.expect("a command"))
+}
+
 /// Today, by the computer's clock: read here and in the window's start, and nowhere else.
 pub(crate) fn today() -> jiff::civil::Date {
     jiff::ZonedDateTime::now().date()
+}
+
+#[cfg(test)]
+mod tests {
+    use clap::CommandFactory;
+
+    use super::*;
+
+    #[test]
+    fn the_command_line_is_sound_and_unknown_words_end_with_2() {
+        Cli::command().debug_assert();
+        let parse = |line: &str| Cli::try_parse_from(std::iter::once("slidehalt").chain(line.split_whitespace()));
+        for line in [
+            "check",
+            "check a --rules none",
+            "check a --on 2026-13-01",
+            "record a.ron",
+            "record a.ron --out a.pdf --paper a5",
+            "distance --rules eu-press",
+            "distance --rules eu-press --safeguard mat --what 5",
+            "distance --rules eu-press --safeguard mat --stopping-ms 5 --stops-ms 5,6",
+            "stops",
+            "--renderer none",
+        ] {
+            assert_eq!(parse(line).map(|_| ()).map_err(|error| error.exit_code()), Err(2), "{line}");
+        }
+        let bare = parse("").unwrap();
+        assert!(bare.command.is_none() && bare.plant_folder.is_none());
+        let folder = parse("some/plant --renderer cpu").unwrap();
+        assert_eq!(folder.plant_folder, Some("some/plant".into()));
+    }
 }

@@ -12,6 +12,7 @@ use calc::units::{Rate, Time};
 use serde_json::{Value, json};
 
 use super::args::{AddReadingArgs, ExportReadingsArgs, ImportReadingsArgs, ReadingsArgs};
+use super::figures::figures;
 use super::outcome::columns;
 use super::{Outcome, today};
 
@@ -127,21 +128,14 @@ fn to_json(press: &Press, standing: &monthly::Standing) -> Value {
 pub fn add(args: &AddReadingArgs) -> Outcome {
     let mut outcome = Outcome::default();
     let at = Moment::parse("Date", &args.date).map_err(|refusal| outcome.refuse(refusal.to_string())).ok();
-    let mut stops = Vec::new();
-    let parts: Vec<&str> = if args.stops_ms.contains([';', ' ']) {
-        args.stops_ms.split([';', ' ']).collect()
-    } else {
-        args.stops_ms.split(',').collect()
-    };
-    for part in parts.into_iter().filter(|part| !part.trim().is_empty()) {
-        match Time::parse(part, &limits::STOPPING_TIME) {
-            Ok(time) => stops.push(time),
-            Err(refusal) => outcome.refuse(refusal.to_string()),
-        }
-    }
-    if stops.is_empty() && outcome.code == 0 {
-        outcome.refuse("No stop is given. Add --stops-ms with one or more stopping times.");
-    }
+    let stops: Vec<Time> = figures(&args.stops_ms, &limits::STOPPING_TIME)
+        .unwrap_or_else(|refusals| {
+            refusals.iter().for_each(|refusal| outcome.refuse(refusal.to_string()));
+            Vec::new()
+        })
+        .into_iter()
+        .map(Time::from_base)
+        .collect();
     let speed = args.speed.as_ref().map(|text| Rate::parse(text, &limits::SPEED));
     let speed = speed.transpose().map_err(|refusal| outcome.refuse(refusal.to_string())).ok().flatten();
     let (Some(at), 0) = (at, outcome.code) else { return outcome };

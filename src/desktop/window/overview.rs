@@ -159,12 +159,14 @@ fn table_ui(
     let mut clicked = None;
     Grid::new("overview").num_columns(7).spacing([20.0, 6.0]).striped(true).show(ui, |ui| {
         for (column, name) in COLUMNS {
+            if column == Column::Due {
+                caption(ui, "readings");
+            }
             let text = RichText::new(name).size(12.5);
             if ui.selectable_label(sorted_by == column, text).clicked() {
                 clicked = Some(column);
             }
         }
-        caption(ui, "readings");
         ui.end_row();
         for row in rows {
             let press = &row.result.press;
@@ -175,6 +177,7 @@ fn table_ui(
             ui.label(row.result.spare().map_or(String::new(), |spare| length_text(spare, unit, Towards::Smaller)));
             ui.label(row.drift_ms.map_or(String::new(), drift_words));
             ui.label(row.limit.clone().unwrap_or_default());
+            trend_ui(ui, row.standing);
             match &row.due {
                 Some(due) => {
                     let role = if due.on < today { Role::Retime } else { Role::Ink };
@@ -186,7 +189,6 @@ fn table_ui(
                     ui.label("");
                 }
             }
-            trend_ui(ui, row.standing);
             ui.end_row();
         }
     });

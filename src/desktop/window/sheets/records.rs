@@ -111,7 +111,8 @@ fn sign_off_ui(ui: &mut Ui, cx: &SheetContext, drafts: &mut RecordsDrafts) {
                 [(&mut signed.name, "name", 140.0), (&mut signed.role, "role", 120.0), (&mut signed.date, "date", 90.0)]
             {
                 let id = Id::unique(("sign-off", &cx.press.tag, what, name));
-                let response = ui.add(TextEdit::singleline(text).id(id).desired_width(width));
+                let edit = TextEdit::singleline(text).id(id);
+                let response = ui.add_sized([width, ui.spacing().interact_size.y], edit);
                 response
                     .widget_info(|| egui::WidgetInfo::labeled(egui::Role::TextInput, true, format!("{what}, {name}")));
             }

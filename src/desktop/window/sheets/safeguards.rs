@@ -42,9 +42,8 @@ impl Card<'_> {
         &self.cx.result.assessments[self.index]
     }
 
-    /// The identity of a field: the press, the safeguard and the field, wherever they stand.
     fn id(&self, field: &str) -> Id {
-        Id::unique(("safeguard", &self.cx.press.tag, self.index, field))
+        field_id(self.cx, self.index, field)
     }
 
     /// Asks for a change of this safeguard.
@@ -71,7 +70,15 @@ pub fn safeguards_ui(ui: &mut Ui, cx: &SheetContext, drafts: &mut SafeguardsDraf
         });
         ui.add_space(6.0);
     }
-    add::add_ui(ui, cx, &mut drafts.add, wishes);
+    if add::add_ui(ui, cx, &mut drafts.add, wishes) {
+        // What is measured next is the distance of the new one.
+        drafts.fields.focus(field_id(cx, cx.press.safeguards.len(), "distance"));
+    }
+}
+
+/// The identity of a field: the press, the safeguard and the field, wherever they stand.
+fn field_id(cx: &SheetContext, index: usize, field: &str) -> Id {
+    Id::unique(("safeguard", &cx.press.tag, index, field))
 }
 
 fn head_ui(ui: &mut Ui, card: &Card, drafts: &mut SafeguardsDrafts, wishes: &mut Wishes) {

@@ -46,6 +46,10 @@ impl StopTestsDrafts {
         if self.tag != press.tag {
             *self = Self { tag: press.tag.clone(), tests, ..Self::default() };
             self.grid.chosen = governing.unwrap_or(tests.saturating_sub(1));
+            if tests == 0 {
+                // On a press without tests this is what one comes for: the cursor stands in the first field.
+                self.fields.focus(first_test_id(press).with("angle"));
+            }
         }
         if self.tests != tests {
             if tests < self.tests {
@@ -188,9 +192,14 @@ fn edit_test(press: &Press, chosen: usize, edit: Edit, wishes: &mut Wishes) {
 }
 
 /// The form of the first test of a press: every field is empty until somebody fills it in.
+/// What the ids of the fields of a press's first test begin with.
+fn first_test_id(press: &Press) -> Id {
+    Id::unique((press.tag.as_str(), "first-stop-test"))
+}
+
 fn first_test_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDrafts, wishes: &mut Wishes) {
     ui.label("No stop was timed on this press yet. State how the first test is made; its stops are typed afterwards.");
-    let owner = Id::unique((cx.press.tag.as_str(), "first-stop-test"));
+    let owner = first_test_id(cx.press);
     let strip = keep_strip(ui, 1);
     let mut refused = Vec::new();
     let mut form = Form { owner, drafts: &mut drafts.fields, label: LABEL, field: FIELD, refused: &mut refused };
