@@ -19,7 +19,7 @@ use super::widgets::{
     Commit, Drafts, FieldKind, Named, caption, choice_ui, field_ui, heading, refusal_line, text_field,
 };
 use super::wishes::{Wish, Wishes};
-use crate::document::{Act, Change};
+use crate::document::{Act, Change, Document};
 
 /// What is asked.
 pub enum Dialog {
@@ -40,12 +40,20 @@ pub enum Dialog {
 pub struct PathDraft {
     text: String,
     is_fresh: bool,
+    /// Why the path could not be taken.
+    refusal: Option<String>,
 }
 
 /// The settings that are being edited.
 pub struct PlantDraft {
     settings: PlantSettings,
     drafts: Drafts,
+}
+
+impl PathDraft {
+    fn new(text: String) -> Self {
+        Self { text, is_fresh: true, refusal: None }
+    }
 }
 
 /// What is done once the unsaved changes are dealt with.
@@ -84,12 +92,12 @@ impl Dialog {
     /// Asks which plant to open, beginning from the present one.
     pub fn open(folder: Option<PathBuf>) -> Self {
         let text = folder.map_or(String::new(), |folder| folder.display().to_string());
-        Self::Open(PathDraft { text, is_fresh: true })
+        Self::Open(PathDraft::new(text))
     }
 
     /// Asks for a new plant.
     pub fn new_plant() -> Self {
-        Self::NewPlant(PathDraft { text: String::new(), is_fresh: true }, String::new())
+        Self::NewPlant(PathDraft::new(String::new()), String::new())
     }
 
     /// Asks for the tag of a new press.
@@ -99,27 +107,44 @@ impl Dialog {
 
     /// Asks what holds for the plant.
     pub fn plant(settings: &PlantSettings) -> Self {
-        Self::Plant(Box::new(PlantDraft { settings: settings.clone(), drafts: Drafts::default() }))
+        let mut drafts = Drafts::default();
+        drafts.focus(plant_id("name"));
+        Self::Plant(Box::new(PlantDraft { settings: settings.clone(), drafts }))
+    }
+
+    /// Says why the path could not be taken, and gives the cursor back to it.
+    pub fn refuse(&mut self, why: String) {
+        if let Self::Open(path) | Self::NewPlant(path, _) = self {
+            path.refusal = Some(why);
+            path.is_fresh = true;
+        }
     }
 
     /// Takes a path from the system's folder dialog.
     pub fn take_path(&mut self, folder: &Path) {
         if let Self::Open(path) | Self::NewPlant(path, _) = self {
             path.text = folder.display().to_string();
+            path.refusal = None;
         }
     }
 }
 
 /// Shows a dialog.
-pub fn dialog_ui(context: &Context, dialog: &mut Dialog, jobs: &mut Jobs, wishes: &mut Wishes) -> Outcome {
+pub fn dialog_ui(
+    context: &Context,
+    dialog: &mut Dialog,
+    document: Option<&Document>,
+    jobs: &mut Jobs,
+    wishes: &mut Wishes,
+) -> Outcome {
     let mut outcome = Outcome::Stays;
     let response = Modal::new(Id::unique("dialog")).show(context, |ui| {
-        ui.set_width(520.0);
+        ui.set_width(560.0);
         ui.spacing_mut().item_spacing.y = 8.0;
         outcome = match dialog {
             Dialog::Open(path) => open_ui(ui, path, jobs),
             Dialog::NewPlant(path, name) => new_plant_ui(ui, path, name, jobs),
-            Dialog::NewPress(tag, refusal, is_fresh) => new_press_ui(ui, tag, refusal, is_fresh, wishes),
+            Dialog::NewPress(tag, refusal, is_fresh) => new_press_ui(ui, document, tag, refusal, is_fresh, wishes),
             Dialog::Unsaved(then) => unsaved_ui(ui, then),
             Dialog::Plant(draft) => plant_ui(ui, draft, wishes),
         };
@@ -147,13 +172,28 @@ fn path_ui(ui: &mut Ui, path: &mut PathDraft, jobs: &mut Jobs) -> bool {
     if std::mem::take(&mut path.is_fresh) {
         response.request_focus();
     }
+    if response.changed() {
+        path.refusal = None;
+    }
     response.lost_focus() && ui.input(|input| input.key_pressed(Key::Enter))
+}
+
+/// What a path must be, or why this one could not be taken, in the same place.
+fn path_words_ui(ui: &mut Ui, path: &PathDraft, what: &str) {
+    match &path.refusal {
+        Some(why) => {
+            ui.add(egui::Label::new(RichText::new(why).color(theme::colour(ui.ctx(), Role::Short))).wrap());
+        }
+        None => {
+            caption(ui, what);
+        }
+    }
 }
 
 fn open_ui(ui: &mut Ui, path: &mut PathDraft, jobs: &mut Jobs) -> Outcome {
     title(ui, "Open a plant");
     let is_entered = path_ui(ui, path, jobs);
-    caption(ui, "The folder that holds plant.ron. Type its path, or choose it.");
+    path_words_ui(ui, path, "The folder that holds plant.ron. Type its path, or choose it.");
     let mut outcome = Outcome::Stays;
     ui.horizontal(|ui| {
         let is_ready = !path.text.trim().is_empty();
@@ -170,7 +210,7 @@ fn open_ui(ui: &mut Ui, path: &mut PathDraft, jobs: &mut Jobs) -> Outcome {
 fn new_plant_ui(ui: &mut Ui, path: &mut PathDraft, name: &mut String, jobs: &mut Jobs) -> Outcome {
     title(ui, "New plant");
     path_ui(ui, path, jobs);
-    caption(ui, "An empty folder, or one that does not exist yet.");
+    path_words_ui(ui, path, "An empty folder, or one that does not exist yet.");
     let label = ui.label("Name of the plant");
     let named = ui.add(TextEdit::singleline(name).id_salt("plant name").desired_width(400.0)).labelled_by(label.id);
     let is_entered = named.lost_focus() && ui.input(|input| input.key_pressed(Key::Enter));
@@ -201,6 +241,7 @@ fn new_plant_ui(ui: &mut Ui, path: &mut PathDraft, name: &mut String, jobs: &mut
 
 fn new_press_ui(
     ui: &mut Ui,
+    document: Option<&Document>,
     tag: &mut String,
     refusal: &mut Option<Refusal>,
     is_fresh: &mut bool,
@@ -218,7 +259,7 @@ fn new_press_ui(
     let mut outcome = Outcome::Stays;
     ui.horizontal(|ui| {
         if ui.button("Add it").clicked() || is_entered {
-            match check_tag(tag.trim()) {
+            match document.map_or_else(|| check_tag(tag.trim()), |document| document.check_tag(tag.trim())) {
                 Ok(()) => {
                     let press = Box::new(empty_press(tag.trim().to_owned()));
                     let label = format!("add press {}", press.tag);
@@ -301,10 +342,14 @@ impl Named for Wished {
     }
 }
 
+fn plant_id(field: &str) -> Id {
+    Id::unique(("plant settings", field))
+}
+
 fn plant_ui(ui: &mut Ui, draft: &mut PlantDraft, wishes: &mut Wishes) -> Outcome {
     title(ui, "Plant settings");
     let PlantDraft { settings, drafts } = draft;
-    let id = |name: &str| Id::unique(("plant settings", name));
+    let id = plant_id;
     if let Some(Commit::Set(name, _)) =
         text_field(ui, id("name"), FieldKind::words("Name").wide(320.0), &settings.name, drafts)
     {

@@ -50,6 +50,11 @@ impl GridDrafts {
         self.block.clear();
     }
 
+    /// How many cells hold text that could not be taken.
+    pub fn refused_cells(&self) -> usize {
+        self.cells.refused()
+    }
+
     /// Every refusal in the cells of the chosen test, each with the stop that it is about.
     pub fn refused(&self, press: &Press) -> Vec<String> {
         let Some(test) = press.stop_tests.get(self.chosen) else { return Vec::new() };
