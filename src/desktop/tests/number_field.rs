@@ -50,8 +50,7 @@ fn form_ui(ui: &mut Ui, form: &mut Form) {
         refusal_line(ui, drafts.refusal(id(name)));
     }
     let kind = FieldKind::figure("Distance", "");
-    let commit =
-        length_field(ui, id("Distance"), kind, &INSTALLED, form.unit, Side::Shorter, form.distance, drafts);
+    let commit = length_field(ui, id("Distance"), kind, &INSTALLED, form.unit, Side::Shorter, form.distance, drafts);
     if let Some(Commit::Set(distance, _)) = commit {
         form.distance = Some(distance);
     }
@@ -65,10 +64,8 @@ fn form_ui(ui: &mut Ui, form: &mut Form) {
 }
 
 fn harness(form: Form) -> Harness<'static, Form> {
-    let mut harness = Harness::builder()
-        .with_size([600.0, 400.0])
-        .with_context_setup(theme::install)
-        .build_ui_state(form_ui, form);
+    let mut harness =
+        Harness::builder().with_size([600.0, 400.0]).with_context_setup(theme::install).build_ui_state(form_ui, form);
     harness.run();
     harness
 }

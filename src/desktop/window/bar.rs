@@ -28,18 +28,19 @@ pub fn bar_ui(ui: &mut Ui, press: Option<&Press>, view: &ViewState, history: Opt
                 ui.separator();
                 changes_ui(ui, history, wishes);
             }
-            ui.with_layout(Layout::left_to_right(Align::Center), |ui| title_ui(ui, press, history));
+            ui.with_layout(Layout::left_to_right(Align::Center), |ui| title_ui(ui, press, view, history));
         });
     });
 }
 
 /// What is shown. Too long a description is cut short, and stands whole in the hover text.
-fn title_ui(ui: &mut Ui, press: Option<&Press>, history: Option<&History>) {
+fn title_ui(ui: &mut Ui, press: Option<&Press>, view: &ViewState, history: Option<&History>) {
     let (name, words) = match (press, history) {
         (Some(press), _) => {
             let about = [&press.description, &press.location].into_iter().filter(|text| !text.is_empty());
             (press.tag.as_str(), about.cloned().collect::<Vec<_>>().join(", "))
         }
+        (None, Some(_)) if view.is_overview => ("All presses", String::new()),
         (None, Some(history)) => (history.document().settings.name.as_str(), String::new()),
         (None, None) => ("Slidehalt", String::new()),
     };

@@ -14,9 +14,10 @@ use figure::Role;
 
 use super::app::empty_press;
 use super::jobs::Jobs;
+use super::sheets::label_ui;
 use super::theme;
 use super::widgets::{
-    Commit, Drafts, FieldKind, Named, caption, choice_ui, field_ui, heading, refusal_line, text_field,
+    Commit, Drafts, FieldKind, Named, bare_choice_ui, caption, field_ui, heading, refusal_line, segments_ui, text_field,
 };
 use super::wishes::{Wish, Wishes};
 use crate::document::{Act, Change, Document};
@@ -138,7 +139,8 @@ pub fn dialog_ui(
     wishes: &mut Wishes,
 ) -> Outcome {
     let mut outcome = Outcome::Stays;
-    let response = Modal::new(Id::unique("dialog")).show(context, |ui| {
+    let frame = egui::Frame::popup(&context.global_style()).inner_margin(20.0);
+    let response = Modal::new(Id::unique("dialog")).frame(frame).show(context, |ui| {
         ui.set_width(560.0);
         ui.spacing_mut().item_spacing.y = 8.0;
         outcome = match dialog {
@@ -342,6 +344,14 @@ impl Named for Wished {
     }
 }
 
+/// A row of a dialog: its name in a column of its own.
+fn row_ui(ui: &mut Ui, name: &str, add: impl FnOnce(&mut Ui)) {
+    ui.horizontal(|ui| {
+        label_ui(ui, 140.0, name);
+        add(ui);
+    });
+}
+
 fn plant_id(field: &str) -> Id {
     Id::unique(("plant settings", field))
 }
@@ -350,41 +360,65 @@ fn plant_ui(ui: &mut Ui, draft: &mut PlantDraft, wishes: &mut Wishes) -> Outcome
     title(ui, "Plant settings");
     let PlantDraft { settings, drafts } = draft;
     let id = plant_id;
-    if let Some(Commit::Set(name, _)) =
-        text_field(ui, id("name"), FieldKind::words("Name").wide(320.0), &settings.name, drafts)
-    {
-        settings.name = name;
-    }
-    if let Some(rules) = choice_ui::<RuleSetId>(ui, id("rules"), "Rule set", 260.0, settings.rules) {
-        settings.rules = rules;
-    }
-    caption(ui, settings.rules.edition());
-    if let Some(wish) = choice_ui(ui, id("wish"), "Value taken forward, at least", 240.0, Wished(settings.wish)) {
-        settings.wish = wish.0;
-    }
-    caption(ui, "A wish can only make a result more cautious than the rule set.");
+    let mut refused = None;
+    row_ui(ui, "Name", |ui| {
+        let kind = FieldKind::words("Name").bare().wide(320.0);
+        if let Some(Commit::Set(name, _)) = text_field(ui, id("name"), kind, &settings.name, drafts) {
+            settings.name = name;
+        }
+    });
+    row_ui(ui, "Rule set", |ui| {
+        if let Some(rules) =
+            bare_choice_ui::<RuleSetId>(ui, id("rules"), "Rule set of the plant", 320.0, settings.rules)
+        {
+            settings.rules = rules;
+        }
+    });
+    row_ui(ui, "", |ui| {
+        caption(ui, settings.rules.edition());
+    });
+    row_ui(ui, "Value taken forward", |ui| {
+        let wish = bare_choice_ui(ui, id("wish"), "Value taken forward", 320.0, Wished(settings.wish));
+        if let Some(wish) = wish {
+            settings.wish = wish.0;
+        }
+    });
+    row_ui(ui, "", |ui| {
+        caption(ui, "A wish can only make a result more cautious than the rule set.");
+    });
     heading(ui, "Intervals");
-    let kind = FieldKind::figure("Stop test every", "months");
-    if let Some(months) =
-        count_field(ui, id("months"), kind, &limits::INTERVAL_MONTHS, settings.test_interval_months, drafts)
-    {
-        settings.test_interval_months = months;
-    }
-    let interval = [
-        (None, "none"),
-        (Some(Interval::Weeks(1)), "every week"),
-        (Some(Interval::Months(1)), "every month"),
-        (Some(Interval::Months(3)), "every 3 months"),
-    ];
-    if let Some(interval) = super::widgets::segments_ui(ui, "Reading", settings.reading_interval, &interval) {
-        settings.reading_interval = interval;
-    }
-    let kind = FieldKind::figure("Warning from", "% of the spare on");
-    if let Some(share) =
-        count_field(ui, id("share"), kind, &limits::WARNING_SHARE, settings.warning_share_percent, drafts)
-    {
-        settings.warning_share_percent = share;
-    }
+    row_ui(ui, "Stop test every", |ui| {
+        let kind = FieldKind::figure("Stop test every", "months").bare();
+        let months = id("months");
+        if let Some(count) =
+            count_field(ui, months, kind, &limits::INTERVAL_MONTHS, settings.test_interval_months, drafts)
+        {
+            settings.test_interval_months = count;
+        }
+        refused = drafts.refusal(months).cloned();
+    });
+    row_ui(ui, "Reading", |ui| {
+        let interval = [
+            (None, "none"),
+            (Some(Interval::Weeks(1)), "every week"),
+            (Some(Interval::Months(1)), "every month"),
+            (Some(Interval::Months(3)), "every 3 months"),
+        ];
+        if let Some(interval) = segments_ui(ui, "", settings.reading_interval, &interval) {
+            settings.reading_interval = interval;
+        }
+    });
+    row_ui(ui, "Warning from", |ui| {
+        let kind = FieldKind::figure("Warning from", "% of the spare on").bare();
+        let share = id("share");
+        if let Some(count) =
+            count_field(ui, share, kind, &limits::WARNING_SHARE, settings.warning_share_percent, drafts)
+        {
+            settings.warning_share_percent = count;
+        }
+        refused = refused.take().or_else(|| drafts.refusal(share).cloned());
+    });
+    refusal_line(ui, refused.as_ref());
     ui.collapsing("What laws and guides ask for", |ui| {
         for preset in PRESETS {
             ui.label(format!("{}: {}", preset.name, preset.interval.words()));
@@ -392,12 +426,7 @@ fn plant_ui(ui: &mut Ui, draft: &mut PlantDraft, wishes: &mut Wishes) -> Outcome
         }
     });
     let mut outcome = Outcome::Stays;
-    if drafts.has_refusals() {
-        ui.label(
-            RichText::new("A field cannot be taken; correct it first.").color(theme::colour(ui.ctx(), Role::Short)),
-        );
-    }
-    let is_sound = !drafts.has_refusals();
+    let is_sound = drafts.refused() == 0;
     ui.horizontal(|ui| {
         if ui.add_enabled(is_sound, egui::Button::new("Take over")).clicked() {
             let settings = settings.clone();

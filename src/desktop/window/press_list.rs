@@ -46,6 +46,7 @@ pub fn press_list_ui(
     wishes: &mut Wishes,
 ) {
     ui.spacing_mut().item_spacing.y = 5.0;
+    ui.spacing_mut().button_padding.x = 7.0;
     let name = history.map_or("No plant", |history| history.document().settings.name.as_str());
     ui.add(egui::Label::new(RichText::new(name).font(theme::strong(16.0))).wrap());
     ui.horizontal(|ui| {

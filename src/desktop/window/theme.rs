@@ -39,7 +39,6 @@ pub fn install(context: &Context) {
             style.spacing.button_padding = egui::vec2(10.0, 4.0);
             style.spacing.interact_size.y = 26.0;
             style.spacing.menu_margin = Margin::same(8);
-            style.spacing.window_margin = Margin::same(18);
             style.interaction.selectable_labels = false;
             style.visuals = visuals(palette, theme == Theme::Dark);
             style.animation_time = 0.0;
@@ -111,7 +110,7 @@ fn visuals(palette: Palette, is_dark: bool) -> Visuals {
             active: widget(lift(26), accent, ink),
             open: widget(lift(18), accent, ink),
         },
-        selection: Selection { bg_fill: accent.gamma_multiply(0.28), stroke: Stroke::new(1.5, accent) },
+        selection: Selection { bg_fill: accent.gamma_multiply(0.18), stroke: Stroke::new(1.5, accent) },
         hyperlink_color: accent,
         faint_bg_color: lift(5),
         extreme_bg_color: field,

@@ -14,6 +14,8 @@ mod sample;
 
 use egui::Ui;
 
+pub(super) use form::label_ui;
+
 use super::context::SheetContext;
 use super::wishes::Wishes;
 

@@ -11,7 +11,7 @@ use calc::limits::Limit;
 use calc::refusal::Refusal;
 use calc::round::{Towards, length_digits_full, thousandths_text};
 use calc::units::{Length, LengthUnit};
-use egui::{Id, Key, Response, TextEdit, Ui, WidgetText};
+use egui::{Id, Key, Margin, Response, TextEdit, Ui, WidgetText};
 use figure::Role;
 use jiff::civil::Date;
 
@@ -39,11 +39,6 @@ impl Drafts {
     /// Forgets every draft.
     pub fn clear(&mut self) {
         *self = Self::default();
-    }
-
-    /// Whether a field holds text that could not be taken.
-    pub fn has_refusals(&self) -> bool {
-        self.texts.values().any(|draft| draft.refusal.is_some())
     }
 
     /// How many fields hold text that could not be taken, as the sheet was last drawn. A field that is no longer there, such as
@@ -178,7 +173,7 @@ pub fn field_ui<T>(
                 edit = edit.margin(egui::Margin::symmetric(3, 4));
             }
             if kind.is_figure {
-                edit = edit.align(egui::Align2::RIGHT_CENTER);
+                edit = edit.align(egui::Align2::RIGHT_CENTER).margin(FIGURE_MARGIN);
             }
             if is_refused {
                 edit = edit.text_color(theme::colour(ui.ctx(), Role::Short));
@@ -221,6 +216,9 @@ pub fn field_ui<T>(
     }
     settle(ui, id, &response, text, committed, drafts, read)
 }
+
+/// Room beside the digits; a narrow cell must show all of them.
+const FIGURE_MARGIN: Margin = Margin::symmetric(3, 2);
 
 /// What typing, Enter, Tab, Escape and leaving make of the field.
 fn settle<T>(

@@ -97,7 +97,7 @@ pub const LEAST_WIDTH: f32 = 1016.0;
 impl Widths {
     fn within(available: f32) -> Self {
         let spare = (available - LEAST_WIDTH).clamp(0.0, 160.0);
-        Self { title: 214.0 + spare * 0.4, cell: 42.0 + (spare * 0.06).floor(), gap: 14.0 }
+        Self { title: 194.0 + spare * 0.4, cell: 44.0 + (spare * 0.06).floor(), gap: 14.0 }
     }
 
     fn stops_from(self, left: f32) -> f32 {
