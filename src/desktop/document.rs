@@ -107,7 +107,11 @@ impl Document {
         Ok(())
     }
 
-    fn check_tag(&self, tag: &str) -> Result<(), Refusal> {
+    /// Checks that a new press can bear this tag.
+    ///
+    /// # Errors
+    /// A tag that another press or an unreadable file bears, or that can be no file name.
+    pub fn check_tag(&self, tag: &str) -> Result<(), Refusal> {
         check_tag(tag)?;
         let is_taken = self.presses.iter().any(|press| press.tag.eq_ignore_ascii_case(tag))
             || self

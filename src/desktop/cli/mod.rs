@@ -58,7 +58,12 @@ fn run_line(line: &str) -> Outcome {
 
 /// Today, by the computer's clock: read here and in the window's start, and nowhere else.
 pub(crate) fn today() -> jiff::civil::Date {
-    jiff::ZonedDateTime::now().date()
+    now().date()
+}
+
+/// Now, by the computer's clock.
+fn now() -> jiff::civil::DateTime {
+    jiff::ZonedDateTime::now().datetime()
 }
 
 #[cfg(test)]

@@ -3,7 +3,7 @@
 use std::path::{Path, PathBuf};
 use std::process::ExitCode;
 
-use super::today;
+use super::{now, today};
 use crate::host::{self, HostError, RendererChoice, RendererReport, WindowApp, WindowOptions};
 use crate::window::app::{App, Given};
 use crate::window::theme;
@@ -29,8 +29,13 @@ pub fn open(folder: Option<&Path>, choice: RendererChoice) -> ExitCode {
         icon: None,
     };
     let make = move |_: &egui::Context, renderer: &RendererReport| -> Box<dyn WindowApp> {
-        let given =
-            Given { today: today(), version: env!("CARGO_PKG_VERSION"), renderer: format!("{renderer}."), is_sample };
+        let given = Given {
+            today: today(),
+            clock: now,
+            version: env!("CARGO_PKG_VERSION"),
+            renderer: format!("{renderer}."),
+            is_sample,
+        };
         Box::new(App::new(given, Some(&shown)))
     };
     match host::run(choice, &options, theme::install, make) {

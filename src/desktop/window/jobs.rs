@@ -14,8 +14,8 @@ const TOO_QUICK: Duration = Duration::from_millis(200);
 pub struct Jobs {
     picking: Option<(Receiver<Option<PathBuf>>, Instant)>,
     has_failed: bool,
-    /// Commands that wait until the field with the cursor has committed.
-    pub later: Vec<Command>,
+    /// Commands that wait until the field with the cursor has committed, each with that field.
+    pub later: Vec<(Command, egui::Id)>,
     waited: bool,
     /// Whether the window is closing for good.
     pub is_closing: bool,

@@ -1,6 +1,7 @@
 //! The window: document, drafts, view state and jobs; views read and wish, commands change.
 
 pub mod app;
+mod bar;
 pub mod commands;
 pub mod context;
 pub mod dialogs;

@@ -70,7 +70,6 @@ pub fn overview_ui(
 ) {
     draft.follow(document, today);
     egui::ScrollArea::vertical().id_salt("overview").auto_shrink(false).show(ui, |ui| {
-        ui.label(RichText::new(format!("All presses of {}", document.settings.name)).font(theme::strong(20.0)));
         let rows = draft.rows(document, results, today);
         let clicked = table_ui(ui, &rows, draft.sorted_by, unit, today, wishes);
         let csv = csv(&rows, unit);
@@ -157,6 +156,7 @@ fn table_ui(
     wishes: &mut Wishes,
 ) -> Option<Column> {
     let mut clicked = None;
+    let right = ui.max_rect().right();
     Grid::new("overview").num_columns(7).spacing([20.0, 6.0]).striped(true).show(ui, |ui| {
         for (column, name) in COLUMNS {
             if column == Column::Due {
@@ -181,9 +181,11 @@ fn table_ui(
             match &row.due {
                 Some(due) => {
                     let role = if due.on < today { Role::Retime } else { Role::Ink };
-                    ui.label(
-                        RichText::new(format!("{}  {}", due.on, due.what.words())).color(theme::colour(ui.ctx(), role)),
-                    );
+                    let text = RichText::new(format!("{}  {}", due.on, due.what.words()));
+                    let room = vec2((right - ui.cursor().left()).max(80.0), ui.spacing().interact_size.y);
+                    ui.allocate_ui(room, |ui| {
+                        ui.add(egui::Label::new(text.color(theme::colour(ui.ctx(), role))).truncate());
+                    });
                 }
                 None => {
                     ui.label("");

@@ -14,6 +14,8 @@ mod sample;
 
 use egui::Ui;
 
+pub(super) use form::label_ui;
+
 use super::context::SheetContext;
 use super::wishes::Wishes;
 
@@ -79,4 +81,17 @@ pub struct SheetDrafts {
     pub readings: readings::ReadingsDrafts,
     /// On the sheet of records.
     pub records: records::RecordsDrafts,
+}
+
+impl SheetDrafts {
+    /// The sheets on which entries could not be taken, with their number. While there is one, no answer is given: what is typed
+    /// and what would be reckoned from are not the same.
+    pub fn refused(&self) -> Vec<(Sheet, usize)> {
+        let counts = [
+            (Sheet::Press, self.press.refused()),
+            (Sheet::StopTests, self.stop_tests.refused()),
+            (Sheet::Safeguards, self.safeguards.refused()),
+        ];
+        counts.into_iter().filter(|(_, count)| *count > 0).collect()
+    }
 }

@@ -32,6 +32,11 @@ pub struct PressDrafts {
 }
 
 impl PressDrafts {
+    /// How many entries could not be taken.
+    pub fn refused(&self) -> usize {
+        self.fields.refused()
+    }
+
     fn follow(&mut self, press: &Press) {
         if self.tag != press.tag {
             *self = Self { tag: press.tag.clone(), ..Self::default() };

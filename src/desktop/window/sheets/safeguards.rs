@@ -27,6 +27,13 @@ pub struct SafeguardsDrafts {
     compared: compare::Compared,
 }
 
+impl SafeguardsDrafts {
+    /// How many entries could not be taken.
+    pub fn refused(&self) -> usize {
+        self.fields.refused()
+    }
+}
+
 /// The card that is being edited: which press, which place on it.
 struct Card<'a> {
     cx: &'a SheetContext<'a>,

@@ -40,6 +40,11 @@ pub struct StopTestsDrafts {
 }
 
 impl StopTestsDrafts {
+    /// How many entries could not be taken.
+    pub fn refused(&self) -> usize {
+        self.grid.refused_cells() + self.fields.refused()
+    }
+
     /// What was typed for another press, or before tests came or went, belongs to no field of this one.
     fn follow(&mut self, press: &Press, governing: Option<usize>) {
         let tests = press.stop_tests.len();

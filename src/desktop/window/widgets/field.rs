@@ -11,7 +11,7 @@ use calc::limits::Limit;
 use calc::refusal::Refusal;
 use calc::round::{Towards, length_digits_full, thousandths_text};
 use calc::units::{Length, LengthUnit};
-use egui::{Id, Key, Response, TextEdit, Ui, WidgetText};
+use egui::{Id, Key, Margin, Response, TextEdit, Ui, WidgetText};
 use figure::Role;
 use jiff::civil::Date;
 
@@ -22,6 +22,8 @@ use crate::window::theme;
 pub struct Drafts {
     texts: HashMap<Id, Draft>,
     focus: Option<Id>,
+    /// The latest pass in which a field of the sheet was drawn.
+    drawn: u64,
 }
 
 struct Draft {
@@ -29,6 +31,8 @@ struct Draft {
     /// The committed text that the draft began from; when it changes underneath, by undo or a paste, the draft is stale.
     began_from: String,
     refusal: Option<Refusal>,
+    /// The latest pass in which its field was drawn.
+    drawn: u64,
 }
 
 impl Drafts {
@@ -37,9 +41,10 @@ impl Drafts {
         *self = Self::default();
     }
 
-    /// Whether a field holds text that could not be taken.
-    pub fn has_refusals(&self) -> bool {
-        self.texts.values().any(|draft| draft.refusal.is_some())
+    /// How many fields hold text that could not be taken, as the sheet was last drawn. A field that is no longer there, such as
+    /// one of a safeguard that was removed, does not count.
+    pub fn refused(&self) -> usize {
+        self.texts.values().filter(|draft| draft.refusal.is_some() && draft.drawn == self.drawn).count()
     }
 
     /// Puts the cursor into a field as soon as it is drawn.
@@ -55,7 +60,19 @@ impl Drafts {
     /// Keeps text that could not be taken at a field, with the reason.
     pub fn keep_refused(&mut self, id: Id, text: String, refusal: Refusal) {
         let began_from = self.texts.get(&id).map_or(String::new(), |draft| draft.began_from.clone());
-        self.texts.insert(id, Draft { text, began_from, refusal: Some(refusal) });
+        self.texts.insert(id, Draft { text, began_from, refusal: Some(refusal), drawn: self.drawn });
+    }
+
+    fn keep(&mut self, id: Id, text: String, began_from: &str, refusal: Option<Refusal>) {
+        self.texts.insert(id, Draft { text, began_from: began_from.to_owned(), refusal, drawn: self.drawn });
+    }
+
+    /// Takes note that a field is drawn in this pass.
+    fn draw(&mut self, id: Id, pass: u64) {
+        self.drawn = pass;
+        if let Some(draft) = self.texts.get_mut(&id) {
+            draft.drawn = pass;
+        }
     }
 }
 
@@ -142,6 +159,7 @@ pub fn field_ui<T>(
     if drafts.texts.get(&id).is_some_and(|draft| draft.began_from != committed) {
         drafts.texts.remove(&id);
     }
+    drafts.draw(id, ui.ctx().cumulative_pass_nr());
     let mut text = drafts.texts.get(&id).map_or_else(|| committed.to_owned(), |draft| draft.text.clone());
     let is_refused = drafts.refusal(id).is_some();
     let response = ui
@@ -155,7 +173,7 @@ pub fn field_ui<T>(
                 edit = edit.margin(egui::Margin::symmetric(3, 4));
             }
             if kind.is_figure {
-                edit = edit.align(egui::Align2::RIGHT_CENTER);
+                edit = edit.align(egui::Align2::RIGHT_CENTER).margin(FIGURE_MARGIN);
             }
             if is_refused {
                 edit = edit.text_color(theme::colour(ui.ctx(), Role::Short));
@@ -199,6 +217,9 @@ pub fn field_ui<T>(
     settle(ui, id, &response, text, committed, drafts, read)
 }
 
+/// Room beside the digits; a narrow cell must show all of them.
+const FIGURE_MARGIN: Margin = Margin::symmetric(3, 2);
+
 /// What typing, Enter, Tab, Escape and leaving make of the field.
 fn settle<T>(
     ui: &Ui,
@@ -211,8 +232,7 @@ fn settle<T>(
 ) -> Option<Commit<T>> {
     if !response.lost_focus() {
         if response.changed() {
-            let refusal = None;
-            drafts.texts.insert(id, Draft { text, began_from: committed.to_owned(), refusal });
+            drafts.keep(id, text, committed, None);
         }
         return None;
     }
@@ -236,7 +256,7 @@ fn settle<T>(
             Some(Commit::Set(value, moved))
         }
         Err(refusal) => {
-            drafts.texts.insert(id, Draft { text, began_from: committed.to_owned(), refusal: Some(refusal) });
+            drafts.keep(id, text, committed, Some(refusal));
             Some(Commit::Refused)
         }
     }

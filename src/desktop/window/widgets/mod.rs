@@ -5,7 +5,7 @@ mod field;
 mod layout;
 mod step_table;
 
-pub use choice::{Named, choice_ui, segments_ui, switch_ui};
+pub use choice::{Named, bare_choice_ui, choice_ui, segments_ui, switch_ui};
 pub use field::{
     Commit, Drafts, FieldKind, Moved, date_field, field_ui, length_field, moment_field, number_field, text_field,
 };

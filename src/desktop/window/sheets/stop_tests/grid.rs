@@ -50,6 +50,11 @@ impl GridDrafts {
         self.block.clear();
     }
 
+    /// How many cells hold text that could not be taken.
+    pub fn refused_cells(&self) -> usize {
+        self.cells.refused()
+    }
+
     /// Every refusal in the cells of the chosen test, each with the stop that it is about.
     pub fn refused(&self, press: &Press) -> Vec<String> {
         let Some(test) = press.stop_tests.get(self.chosen) else { return Vec::new() };
@@ -92,7 +97,7 @@ pub const LEAST_WIDTH: f32 = 1016.0;
 impl Widths {
     fn within(available: f32) -> Self {
         let spare = (available - LEAST_WIDTH).clamp(0.0, 160.0);
-        Self { title: 214.0 + spare * 0.4, cell: 42.0 + (spare * 0.06).floor(), gap: 14.0 }
+        Self { title: 194.0 + spare * 0.4, cell: 44.0 + (spare * 0.06).floor(), gap: 14.0 }
     }
 
     fn stops_from(self, left: f32) -> f32 {
