@@ -499,7 +499,7 @@ impl WindowApp for App {
             self.follow();
             context.request_repaint();
         }
-        if self.jobs.is_closing {
+        if self.jobs.asks_to_close() {
             context.send_viewport_cmd(ViewportCommand::Close);
         }
     }

@@ -374,9 +374,11 @@ fn plant_ui(ui: &mut Ui, draft: &mut PlantDraft, wishes: &mut Wishes) -> Outcome
             settings.rules = rules;
         }
     });
-    row_ui(ui, "", |ui| {
-        caption(ui, settings.rules.edition());
-    });
+    if settings.rules.edition() != settings.rules.title() {
+        row_ui(ui, "", |ui| {
+            caption(ui, settings.rules.edition());
+        });
+    }
     row_ui(ui, "Value taken forward", |ui| {
         let wish = bare_choice_ui(ui, id("wish"), "Value taken forward", 320.0, Wished(settings.wish));
         if let Some(wish) = wish {

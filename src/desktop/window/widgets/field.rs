@@ -173,7 +173,7 @@ pub fn field_ui<T>(
                 edit = edit.margin(egui::Margin::symmetric(3, 4));
             }
             if kind.is_figure {
-                edit = edit.align(egui::Align2::RIGHT_CENTER).margin(FIGURE_MARGIN);
+                edit = edit.align(egui::Align2::RIGHT_CENTER).margin(figure_margin(kind.width));
             }
             if is_refused {
                 edit = edit.text_color(theme::colour(ui.ctx(), Role::Short));
@@ -217,8 +217,10 @@ pub fn field_ui<T>(
     settle(ui, id, &response, text, committed, drafts, read)
 }
 
-/// Room beside the digits; a narrow cell must show all of them.
-const FIGURE_MARGIN: Margin = Margin::symmetric(3, 2);
+/// Room beside the digits; a narrow cell needs it all for them.
+fn figure_margin(width: f32) -> Margin {
+    Margin::symmetric(if width < 60.0 { 3 } else { 7 }, 2)
+}
 
 /// What typing, Enter, Tab, Escape and leaving make of the field.
 fn settle<T>(
