@@ -132,7 +132,7 @@ pub fn create(folder: &Path, settings: &PlantSettings) -> Result<Known, PlantRef
 /// A file that somebody else changed since it was read, or that cannot be written. The old file is then as it was.
 pub fn save_settings(folder: &Path, settings: &PlantSettings, known: &mut Known) -> Result<(), PlantRefusal> {
     let path = folder.join(SETTINGS);
-    let text = v1::settings_to_text(settings);
+    let text = head_comment(known.settings.as_deref()) + &v1::settings_to_text(settings);
     if v1::settings_from_text(&path, &text)? != *settings {
         let why = "What holds for the plant cannot be saved without loss. Nothing was changed.";
         return Err(PlantRefusal::Folder(why.into()));
@@ -159,7 +159,8 @@ pub fn save_press(
     fs::create_dir_all(&presses)
         .map_err(|error| PlantRefusal::Folder(format!("The folder {} cannot be made: {error}.", presses.display())))?;
     let path = press_path(folder, &press.tag);
-    let text = v1::press_to_text(press);
+    let known_text = known.presses.get(previous_tag.unwrap_or(&press.tag)).map(String::as_str);
+    let text = head_comment(known_text) + &v1::press_to_text(press);
     if text.len() as u64 > LARGEST_FILE {
         return Err(PlantRefusal::Folder(format!(
             "The file of press {} would be {} bytes long; at most {LARGEST_FILE} are read again. Nothing was changed.",
@@ -205,6 +206,12 @@ pub fn save_press(
         })?;
     }
     Ok(())
+}
+
+/// The comment lines that somebody wrote at the head of a file; they stay when the file is written again.
+fn head_comment(text: Option<&str>) -> String {
+    let lines = text.unwrap_or_default().lines();
+    lines.take_while(|line| line.starts_with("//")).map(|line| format!("{line}\n")).collect()
 }
 
 fn press_path(folder: &Path, tag: &str) -> PathBuf {

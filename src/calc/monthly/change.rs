@@ -119,7 +119,8 @@ fn step(press: &Press, days: &[f64], means: &[f64]) -> Option<Step> {
     let signal = [found.rise, found.fall].into_iter().flatten().min_by_key(|signal| signal.at)?;
     // Where the sum began is a first guess; the split that leaves the least scatter near it is the step.
     let from = signal.began_at.saturating_sub(3).max(2);
-    let to = (signal.at + 3).min(means.len() - 1);
+    // One reading alone is no level: at least two stand on either side.
+    let to = (signal.at + 3).min(means.len() - 2);
     let at =
         (from..=to).min_by(|one, other| scatter_of_split(means, *one).total_cmp(&scatter_of_split(means, *other)))?;
     let line = Line::fit(days, means).ok()?;

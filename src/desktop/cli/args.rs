@@ -47,6 +47,12 @@ pub enum Command {
     ExportReadings(ExportReadingsArgs),
     /// What is due across a plant.
     Due(DueArgs),
+    /// Predict one stop from drive data. A prediction is never a measurement.
+    Predict(Box<PredictArgs>),
+    /// Predict the stopping time over start angle and speed.
+    Map(Box<MapArgs>),
+    /// Find the delay and brake torque that explain the measured stops of a press.
+    Fit(Box<FitArgs>),
 }
 
 /// What `check` takes.
@@ -198,6 +204,105 @@ pub enum WithinArg {
     Month,
     /// Twelve months.
     Year,
+}
+
+/// What the drive of a predicted stop is made of.
+#[derive(Args, Debug)]
+#[command(allow_negative_numbers = true)]
+pub struct DriveArgs {
+    /// A press file, from which stroke and rod are taken where they are not given.
+    #[arg(value_name = "PRESS-FILE")]
+    pub press: Option<PathBuf>,
+    /// Stroke of the slide, mm.
+    #[arg(long, value_name = "X")]
+    pub stroke_mm: Option<String>,
+    /// Connecting rod, mm.
+    #[arg(long, value_name = "X")]
+    pub rod_mm: Option<String>,
+    /// Slide travel over angle of a drive that is no plain crank: rows of angle in degrees and travel in mm, at least 24.
+    #[arg(long, value_name = "FILE.csv", conflicts_with_all = ["stroke_mm", "rod_mm"])]
+    pub link_table: Option<PathBuf>,
+    /// Slide with its share of the rod and the upper die (for fit: without the die), kg.
+    #[arg(long, value_name = "X")]
+    pub moving_kg: Option<String>,
+    /// Crank, gears and driven clutch parts reduced to the crank, kg m².
+    #[arg(long, value_name = "X")]
+    pub inertia_kgm2: Option<String>,
+    /// Upward force of the counterbalance, N.
+    #[arg(long, value_name = "X")]
+    pub counterbalance_n: Option<String>,
+    /// Running friction at the crank, N m.
+    #[arg(long, value_name = "X")]
+    pub friction_nm: Option<String>,
+    /// A brake of dead time, rise time and full torque.
+    #[arg(long, value_name = "DELAY_MS,RISE_MS,TORQUE_NM", conflicts_with = "brake_pressure")]
+    pub brake_ramp: Option<String>,
+    /// A brake released by fluid: delay-ms, full-bar, clutch-bar, high-bar, low-bar, touch-bar, fast-ms, slow-ms, dump-ms, torque-nm.
+    #[arg(long, value_name = "KEY=VALUE,...")]
+    pub brake_pressure: Option<String>,
+    /// Which stop is called for.
+    #[arg(long, value_enum, default_value = "normal")]
+    pub path: PathArg,
+}
+
+/// Which stop is called for.
+#[derive(Clone, Copy, PartialEq, Eq, Debug, ValueEnum)]
+pub enum PathArg {
+    /// The stop of every stroke.
+    Normal,
+    /// The emergency stop.
+    Emergency,
+}
+
+/// What `predict` takes.
+#[derive(Args, Debug)]
+#[command(allow_negative_numbers = true)]
+pub struct PredictArgs {
+    /// The drive and its brake.
+    #[command(flatten)]
+    pub drive: DriveArgs,
+    /// Speed at the stop command, strokes a minute.
+    #[arg(long, value_name = "X")]
+    pub speed: Option<String>,
+    /// Crank angle at the stop command, degrees.
+    #[arg(long, value_name = "X")]
+    pub angle: Option<String>,
+    /// Write JSON.
+    #[arg(long)]
+    pub json: bool,
+}
+
+/// What `map` takes.
+#[derive(Args, Debug)]
+#[command(allow_negative_numbers = true)]
+pub struct MapArgs {
+    /// The drive and its brake.
+    #[command(flatten)]
+    pub drive: DriveArgs,
+    /// Speeds, strokes a minute, parted by commas.
+    #[arg(long, value_name = "A,B,...")]
+    pub speeds: String,
+    /// Where to write the map: the ending decides.
+    #[arg(long, value_name = "FILE.csv|.svg|.png")]
+    pub out: PathBuf,
+}
+
+/// What `fit` takes.
+#[derive(Args, Debug)]
+#[command(allow_negative_numbers = true)]
+pub struct FitArgs {
+    /// The drive; its upper die is that of each stop test.
+    #[command(flatten)]
+    pub drive: DriveArgs,
+    /// Rise time of the brake torque, ms, which is not fitted.
+    #[arg(long, value_name = "X")]
+    pub rise_ms: Option<String>,
+    /// Look for the running friction as well.
+    #[arg(long)]
+    pub friction: bool,
+    /// Write JSON.
+    #[arg(long)]
+    pub json: bool,
 }
 
 /// What `distance` takes. Parts of the response that are not given are taken as inside the stopping time.

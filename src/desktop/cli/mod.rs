@@ -8,6 +8,7 @@ mod figures;
 mod json;
 mod outcome;
 mod pdf_file;
+mod predict;
 mod readings;
 mod record;
 mod stops;
@@ -41,6 +42,9 @@ pub fn run(command: Command) -> Outcome {
         Command::ImportReadings(args) => readings::import(&args),
         Command::ExportReadings(args) => readings::export(&args),
         Command::Due(args) => due::due(&args),
+        Command::Predict(args) => predict::predict(&args),
+        Command::Map(args) => predict::map(&args),
+        Command::Fit(args) => predict::fit(&args),
     }
 }
 

@@ -256,3 +256,21 @@ fn a_new_plant_needs_an_empty_folder() {
     refused_unchanged(place.path(), "is not empty", || create(&other, &plant.settings).map(|_| ()));
     refused_unchanged(place.path(), "letter.txt", || create(&other.join("letter.txt"), &plant.settings).map(|_| ()));
 }
+
+#[test]
+fn a_comment_at_the_head_of_a_file_stays() {
+    let folder = tempfile::tempdir().unwrap();
+    plant::copy_samples(folder.path()).unwrap();
+    let path = folder.path().join("presses/E-101.ron");
+    let head = std::fs::read_to_string(&path).unwrap().lines().next().unwrap().to_owned();
+    assert!(head.starts_with("//"));
+    let press = plant::edit_press_file(&path, |press| {
+        press.location = "elsewhere".into();
+        Ok(())
+    })
+    .unwrap();
+    assert_eq!(press.location, "elsewhere");
+    let text = std::fs::read_to_string(&path).unwrap();
+    assert_eq!(text.lines().next(), Some(head.as_str()));
+    assert!(text.contains("elsewhere"));
+}

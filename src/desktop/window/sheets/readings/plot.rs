@@ -53,6 +53,9 @@ pub fn plot_ui(ui: &mut Ui, cx: &SheetContext, standing: &Standing) {
                         .style(LineStyle::dashed_loose()),
                 );
             }
+            let mut below: Option<(f64, bool)> = None;
+            let bounds = plot.plot_bounds();
+            let close = (bounds.max()[1] - bounds.min()[1]) * 0.09;
             for line in &standing.lines {
                 let role = match line.consequence {
                     Consequence::Warn => Role::Unproven,
@@ -63,9 +66,12 @@ pub fn plot_ui(ui: &mut Ui, cx: &SheetContext, standing: &Standing) {
                 plot.hline(HLine::new(line.name, value).color(colour(role)).width(1.2));
                 let words = format!("{} {}", line.name, time_text(line.value, Towards::Smaller));
                 let label = RichText::new(words).size(12.0).color(colour(role)).background_color(ground);
-                plot.text(
-                    Text::new(line.name, PlotPoint::new(chart.range.0, value), label).anchor(Align2::LEFT_BOTTOM),
-                );
+                // Labels of limits that lie close stand at opposite ends.
+                let is_left = below.is_none_or(|(other, was_left)| value - other > close || !was_left);
+                below = Some((value, is_left));
+                let (x, anchor) =
+                    if is_left { (chart.range.0, Align2::LEFT_BOTTOM) } else { (chart.range.1, Align2::RIGHT_BOTTOM) };
+                plot.text(Text::new(line.name, PlotPoint::new(x, value), label).anchor(anchor));
             }
             for line in &chart.lines {
                 let series: PlotPoints = line.points.iter().map(|(x, y)| [*x, *y]).collect();
