@@ -134,6 +134,9 @@ fn while_an_entry_cannot_be_taken_no_answer_is_given_and_no_record_printed() {
     window.key(Key::Tab);
     let words = "An entry on the sheet Press cannot be taken.";
     assert!(window.shows(words) && window.shows("P-07 no result"));
+    assert!(window.shows("Monitor setting is 99999 ms. It must be from 1 to 10000 ms."));
+    window.ctrl(Key::Num3);
+    assert!(window.shows(words) && !window.shows("What the installed distance allows"));
     assert!(!window.shows("Front curtain is short"));
     window.ctrl(Key::Num5);
     assert!(window.shows(words));
@@ -174,7 +177,7 @@ fn what_is_typed_waits_at_its_press() {
     assert_eq!(shown(&window), "P-08");
     assert_eq!(window.text_of("Monitor setting"), "");
     assert!(!window.shows("cannot be taken"));
-    window.click("P-07 Short");
+    window.click("P-07 no result");
     assert_eq!(shown(&window), "P-07");
     assert_eq!(window.text_of("Monitor setting"), "99999");
     assert!(window.shows("An entry on the sheet Press cannot be taken."));

@@ -428,7 +428,7 @@ fn plant_ui(ui: &mut Ui, draft: &mut PlantDraft, wishes: &mut Wishes) -> Outcome
         }
     });
     let mut outcome = Outcome::Stays;
-    let is_sound = drafts.refused() == 0;
+    let is_sound = drafts.refused().is_empty();
     ui.horizontal(|ui| {
         if ui.add_enabled(is_sound, egui::Button::new("Take over")).clicked() {
             let settings = settings.clone();

@@ -41,10 +41,13 @@ impl Drafts {
         *self = Self::default();
     }
 
-    /// How many fields hold text that could not be taken, as the sheet was last drawn. A field that is no longer there, such as
-    /// one of a safeguard that was removed, does not count.
-    pub fn refused(&self) -> usize {
-        self.texts.values().filter(|draft| draft.refusal.is_some() && draft.drawn == self.drawn).count()
+    /// What could not be taken, in words, as the sheet was last drawn. A field that is no longer there, such as one of a safeguard
+    /// that was removed, does not count.
+    pub fn refused(&self) -> Vec<String> {
+        let drawn = self.texts.values().filter(|draft| draft.drawn == self.drawn);
+        let mut words: Vec<String> = drawn.filter_map(|draft| Some(draft.refusal.as_ref()?.to_string())).collect();
+        words.sort_unstable();
+        words
     }
 
     /// Puts the cursor into a field as soon as it is drawn.
