@@ -15,7 +15,7 @@ use calc::statistics::{
 };
 
 const READINGS: usize = 120;
-const LIMIT_MS: f64 = 230.0;
+const LIMIT_MS: f64 = 210.0;
 const RUNS: usize = 300;
 
 fn main() {
