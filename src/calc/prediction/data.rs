@@ -1,5 +1,6 @@
 //! Drive and brake of a press as people enter them: checked number by number, in the units of the trade, and as incomplete as a form.
 
+use crate::motion::Counterbalance;
 use crate::stop_test::ClockStart;
 use crate::units::{Angle, Area, Force, Inertia, Length, Mass, Pressure, Time, Torque};
 
@@ -53,6 +54,21 @@ pub enum Lift {
         /// Piston area of all cylinders together.
         area: Option<Area>,
     },
+}
+
+impl Lift {
+    /// As the stop model takes it, where everything of it is known.
+    pub fn as_motion(self) -> Option<Counterbalance> {
+        match self {
+            Self::NotStated => None,
+            Self::None => Some(Counterbalance::None),
+            Self::Force(force) => Some(Counterbalance::Force { force_n: force?.to_f64() }),
+            Self::Cylinders { pressure, area } => Some(Counterbalance::Cylinders {
+                pressure_pa: pressure?.base() as f64 * 100.0,
+                area_m2: area?.to_f64() * 1e-4,
+            }),
+        }
+    }
 }
 
 /// One row of the travel table of a link drive.

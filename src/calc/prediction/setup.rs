@@ -9,7 +9,7 @@ use crate::motion::{
 };
 use crate::press::{Clutch, DriveKind, Press};
 use crate::stop_test;
-use crate::units::{Angle, Area, Force, Inertia, Length, Mass, Pressure, Rate, Time, Torque};
+use crate::units::{Angle, Inertia, Length, Mass, Pressure, Rate, Time, Torque};
 
 /// Where and how a predicted stop begins.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
@@ -142,20 +142,18 @@ pub fn drive_of(press: &Press, upper_die: Mass, counterbalance: Option<Pressure>
     }
     let slide_mass_kg = asked.or_missing("slide mass", data.slide_mass, Mass::to_f64);
     let reduced_inertia_kg_m2 = asked.or_missing("inertia at the crank", data.inertia, Inertia::to_f64);
-    let lift = match data.counterbalance {
-        Lift::NotStated => {
-            asked.missing.push("counterbalance (none is an answer)");
-            Counterbalance::None
-        }
-        Lift::None => Counterbalance::None,
-        Lift::Force(force) => {
-            Counterbalance::Force { force_n: asked.or_missing("counterbalance force", force, Force::to_f64) }
-        }
-        Lift::Cylinders { pressure, area } => Counterbalance::Cylinders {
-            pressure_pa: asked.or_missing("counterbalance pressure", counterbalance.or(pressure), pascals),
-            area_m2: asked.or_missing("counterbalance piston area", area, |area: Area| area.to_f64() * 1e-4),
-        },
+    let entered = match data.counterbalance {
+        Lift::Cylinders { pressure, area } => Lift::Cylinders { pressure: counterbalance.or(pressure), area },
+        other => other,
     };
+    let lift = entered.as_motion().unwrap_or_else(|| {
+        asked.missing.push(match entered {
+            Lift::NotStated | Lift::None => "counterbalance (none is an answer)",
+            Lift::Force(_) => "counterbalance force",
+            Lift::Cylinders { .. } => "counterbalance pressure and piston area",
+        });
+        Counterbalance::None
+    });
     let friction_torque_nm = asked.or_missing("running friction (0 is cautious)", data.friction, newton_metres);
     asked.done()?;
     Ok(Drive::new(DriveData {
@@ -266,6 +264,7 @@ pub(super) mod tests {
     use super::*;
     use crate::prediction::RampData;
     use crate::press::{Clutch, ClutchMedium, Frame};
+    use crate::units::Force;
 
     /// A press without anything but a part-revolution clutch.
     pub fn bare_press() -> Press {

@@ -6,6 +6,7 @@ use calc::rules::RuleSetId;
 use clap::{Args, Parser, Subcommand, ValueEnum};
 use jiff::civil::Date;
 
+use super::motion_args::{FitArgs, MapArgs, PredictArgs};
 use crate::host::RendererChoice;
 
 /// Stopping times of mechanical power presses to safety distances.
@@ -37,6 +38,12 @@ pub enum Command {
     Distance(Box<DistanceArgs>),
     /// Mean, spread and bounds of timed stops.
     Stops(StopsArgs),
+    /// The stop that drive and brake predict: time, angle, travel. A prediction, no measurement.
+    Predict(Box<PredictArgs>),
+    /// Predicted stops over start angle and speed, as a table or a picture.
+    Map(Box<MapArgs>),
+    /// Delay and torque of the brake from the stop tests of a press.
+    Fit(FitArgs),
 }
 
 /// What `check` takes.

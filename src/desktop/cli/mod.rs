@@ -3,8 +3,12 @@
 mod args;
 mod check;
 mod distance;
+mod fit;
 mod json;
+mod map;
+mod motion_args;
 mod outcome;
+mod predict;
 mod record;
 mod stops;
 mod window;
@@ -32,6 +36,9 @@ pub fn run(command: Command) -> Outcome {
         Command::Record(args) => record::record(&args),
         Command::Distance(args) => distance::distance(&args),
         Command::Stops(args) => stops::stops(&args),
+        Command::Predict(args) => predict::predict(&args),
+        Command::Map(args) => map::map(&args),
+        Command::Fit(args) => fit::fit(&args),
     }
 }
 
