@@ -62,7 +62,8 @@ impl Document {
 
     /// The tag under which a press stands in the folder, where it bears another one now.
     pub fn saved_tag<'a>(&'a self, saved: &'a Self, press: &Press) -> Option<&'a str> {
-        let is_free = |tag: &&str| saved.press(tag).is_some() && self.press(tag).is_none();
+        let was_saved = |tag: &&str| saved.press(tag).is_some();
+        let is_free = |tag: &&str| was_saved(tag) && self.press(tag).is_none();
         let renamed = self.renamed.iter().find(|(_, now)| *now == press.tag).map(|(was, _)| was.as_str());
         // Undoing a change of tag after a save leaves no note of it; the press is then the same but for its tag.
         let same_but_for_tag = || {
@@ -72,7 +73,7 @@ impl Document {
                 .find(|old| Press { tag: press.tag.clone(), ..Press::clone(old) } == *press)
                 .map(|old| old.tag.as_str())
         };
-        renamed.filter(is_free).or_else(|| same_but_for_tag().filter(is_free))
+        renamed.filter(was_saved).or_else(|| same_but_for_tag().filter(is_free))
     }
 
     /// Carries out a change, whole or not at all.
@@ -106,7 +107,11 @@ impl Document {
         Ok(())
     }
 
-    fn check_tag(&self, tag: &str) -> Result<(), Refusal> {
+    /// Checks that a new press can bear this tag.
+    ///
+    /// # Errors
+    /// A tag that another press or an unreadable file bears, or that can be no file name.
+    pub fn check_tag(&self, tag: &str) -> Result<(), Refusal> {
         check_tag(tag)?;
         let is_taken = self.presses.iter().any(|press| press.tag.eq_ignore_ascii_case(tag))
             || self

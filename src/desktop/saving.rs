@@ -52,11 +52,7 @@ impl OpenPlant {
         {
             refusals.push(refusal);
         }
-        for press in &document.presses {
-            let is_unchanged = saved.press(&press.tag).is_some_and(|old| Arc::ptr_eq(old, press) || old == press);
-            if is_unchanged {
-                continue;
-            }
+        for press in in_free_order(&document, &saved) {
             let previous = document.saved_tag(&saved, press);
             if let Err(refusal) = plant::save_press(&folder, press, previous, &mut self.known) {
                 refusals.push(refusal);
@@ -69,4 +65,26 @@ impl OpenPlant {
             Err(refusals)
         }
     }
+}
+
+/// The presses that have changed, in an order in which each finds its file free: where tags were passed on from press to press,
+/// the one that moves to a new tag goes first.
+fn in_free_order<'a>(document: &'a Document, saved: &Document) -> Vec<&'a Arc<Press>> {
+    let is_unchanged =
+        |press: &Arc<Press>| saved.press(&press.tag).is_some_and(|old| Arc::ptr_eq(old, press) || old == press);
+    let mut pending: Vec<&Arc<Press>> = document.presses.iter().filter(|press| !is_unchanged(press)).collect();
+    let mut taken: Vec<&str> = saved.presses.iter().map(|press| press.tag.as_str()).collect();
+    let mut ordered = Vec::new();
+    while !pending.is_empty() {
+        let is_ready = |press: &&Arc<Press>| {
+            let own = document.saved_tag(saved, press).unwrap_or(&press.tag);
+            own == press.tag || !taken.contains(&press.tag.as_str())
+        };
+        // A ring of tags has no free end; the save of the first then says what stands in its way.
+        let next = pending.iter().position(is_ready).unwrap_or(0);
+        let press = pending.remove(next);
+        taken.retain(|tag| Some(*tag) != document.saved_tag(saved, press));
+        ordered.push(press);
+    }
+    ordered
 }

@@ -5,6 +5,7 @@
 //! drawn beyond the sensing plane.
 
 use calc::round::{Towards, length_text, time_text};
+use calc::rules::MakeUp;
 use calc::units::{Length, LengthUnit, Speed, Time};
 use calc::verdict::{Assessment, PartState, TimePartKind};
 
@@ -61,16 +62,14 @@ impl StripInput {
                     make_up.speed,
                 );
             }
-            for part in assessment.parts.iter().rev() {
-                let PartState::Added(time) = part.state else { continue };
-                let counted = match part.kind {
-                    TimePartKind::Allowance => Time::from_base(time.base() * make_up.allowance_times),
-                    _ => time,
-                };
-                if counted != Time::ZERO {
-                    let label = format!("{} {}", part.kind.words(), time_text(counted, Towards::Greater));
-                    add(label, counted, part_fill(part.kind), make_up.speed);
-                }
+            for (kind, part, is_cut) in counted_parts(assessment, &make_up).into_iter().rev() {
+                let cut = if is_cut { ", less the opening time" } else { "" };
+                add(
+                    format!("{}{cut} {}", kind.words(), time_text(part, Towards::Greater)),
+                    part,
+                    part_fill(kind),
+                    make_up.speed,
+                );
             }
             if make_up.addition != Length::ZERO {
                 let fill = Fill { role: Role::PartAddition, hatch: Hatch::Upright(0.9) };
@@ -87,6 +86,31 @@ impl StripInput {
         }
         Some(Self { parts, required: demand.required, installed: assessment.relied_on, unit })
     }
+}
+
+/// The parts that are drawn, in the order in which they pass, and whether one was cut. While an interlocked guard is being opened
+/// nobody can reach in: its opening time is taken off the parts that pass first.
+fn counted_parts(assessment: &Assessment, make_up: &MakeUp) -> Vec<(TimePartKind, Time, bool)> {
+    let mut parts: Vec<(TimePartKind, Time, bool)> = assessment
+        .parts
+        .iter()
+        .filter_map(|part| match part.state {
+            PartState::Added(time) if part.kind == TimePartKind::Allowance => {
+                Some((part.kind, Time::from_base(time.base() * make_up.allowance_times), false))
+            }
+            PartState::Added(time) => Some((part.kind, time, false)),
+            PartState::SeenByClock | PartState::Missing => None,
+        })
+        .collect();
+    let total: Time = parts.iter().map(|part| part.1).sum();
+    let mut opening = (total - make_up.time).max(Time::ZERO);
+    for part in &mut parts {
+        let cut = opening.min(part.1);
+        opening = opening - cut;
+        *part = (part.0, part.1 - cut, cut > Time::ZERO);
+    }
+    parts.retain(|part| part.1 > Time::ZERO);
+    parts
 }
 
 fn stop_fill() -> Fill {
@@ -113,7 +137,7 @@ pub fn reach_strip(input: &StripInput, width: f32, fonts: &Fonts) -> Drawing {
     let scale = Scale::new((0.0, left), (widest.to_f64().max(1.0), right));
     let top = 6.5;
     let bottom = top + BAND;
-    let mut drawing = Drawing::new(width, bottom + 12.5);
+    let mut drawing = Drawing::new(width, bottom + 8.0);
     drawing.text(at(left, 4.0), "hazard", TEXT, Anchor::Start, Role::Faint);
 
     let mut from = Length::ZERO;
@@ -137,7 +161,8 @@ pub fn reach_strip(input: &StripInput, width: f32, fonts: &Fonts) -> Drawing {
         }
         from = from + part.length;
     }
-    draw_outer_labels(&mut drawing, &labels, left, right, bottom);
+    let rows = draw_outer_labels(&mut drawing, &labels, left, right, bottom);
+    drawing.height += 4.2 * (rows as f32 - 1.0);
     let required_at = scale.place(input.required.to_f64());
     if let Some(installed) = input.installed {
         let installed_at = scale.place(installed.to_f64());
@@ -163,10 +188,19 @@ pub fn reach_strip(input: &StripInput, width: f32, fonts: &Fonts) -> Drawing {
     drawing
 }
 
-/// Labels of parts too narrow to hold them, below the band with leaders, on two rows where one is too short.
-fn draw_outer_labels(drawing: &mut Drawing, labels: &[(f32, f32, String)], left: f32, right: f32, bottom: f32) {
-    let total: f32 = labels.iter().map(|label| label.1 + 3.0).sum();
-    let rows = if total <= right - left { 1 } else { 2 };
+/// Labels of parts too narrow to hold them, below the band with leaders, on as many rows as they need. Gives the rows.
+fn draw_outer_labels(
+    drawing: &mut Drawing,
+    labels: &[(f32, f32, String)],
+    left: f32,
+    right: f32,
+    bottom: f32,
+) -> usize {
+    let fits = |rows: usize| {
+        (0..rows)
+            .all(|row| labels.iter().skip(row).step_by(rows).map(|label| label.1 + 3.0).sum::<f32>() <= right - left)
+    };
+    let rows = (1..=labels.len().max(1)).find(|rows| fits(*rows)).unwrap_or(labels.len().max(1));
     for row in 0..rows {
         let here: Vec<_> = labels.iter().skip(row).step_by(rows).collect();
         let middles: Vec<f32> = here.iter().map(|label| label.0).collect();
@@ -177,6 +211,7 @@ fn draw_outer_labels(drawing: &mut Drawing, labels: &[(f32, f32, String)], left:
             drawing.text(at(x, y), &label.2, TEXT, Anchor::Middle, Role::Ink);
         }
     }
+    rows
 }
 
 /// The two distances above the band, moved apart where they would run into each other or out of the sheet.
@@ -197,5 +232,42 @@ fn draw_ends(
     let placed = spread(&[required_at, installed_at], &sizes, from, right + 2.0);
     for ((text, x), role) in texts.iter().zip(placed).zip([Role::Ink, Role::Accent]) {
         drawing.strong(at(x, 4.0), text, TEXT, Anchor::Middle, role);
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn the_strip_is_to_scale_and_stays_on_its_sheet() {
+        let part = |label: &str, mm: i64| StripPart { label: label.into(), length: Length::mm(mm), fill: stop_fill() };
+        let input = StripInput {
+            parts: vec![
+                part("wear allowance 5 ms", 10),
+                part("stopping time 150 ms", 300),
+                part("device 2 ms", 4),
+                part("C 86 mm", 86),
+            ],
+            required: Length::mm(400),
+            installed: Some(Length::mm(500)),
+            unit: LengthUnit::Millimetre,
+        };
+        let fonts = Fonts::new();
+        for width in [70.0, 174.0, 400.0] {
+            let drawing = reach_strip(&input, width, &fonts);
+            let areas: Vec<(f32, f32)> = drawing
+                .marks
+                .iter()
+                .filter_map(|mark| match mark {
+                    crate::Mark::Area { points, .. } => Some((points[0].x, points[1].x)),
+                    _ => None,
+                })
+                .collect();
+            // The stopping time takes 300 of 500 mm.
+            let per_mm = (width - 4.0) / 500.0;
+            assert!(areas.iter().any(|(from, to)| (to - from - 300.0 * per_mm).abs() < 0.01), "{width}: {areas:?}");
+            assert!(areas.iter().all(|(from, to)| 0.0 <= *from && *to <= width), "{width}: {areas:?}");
+        }
     }
 }

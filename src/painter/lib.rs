@@ -1,114 +1,151 @@
-//! How it shows: egui's tessellated meshes to pixels on the CPU, for machines with no GPU and for pictures in tests.
+//! How it shows: egui's meshes to pixels on the CPU.
 //!
-//! The result is that of egui's own shaders on a frame buffer without sRGB conversion: vertex colour times texel, both
-//! premultiplied and in gamma space, blended over what is there. A pixel belongs to a shape when its centre does; a centre on
-//! a shared edge belongs to one side only (top-left rule), so that no pixel is blended twice and none is left out.
-//! Paint callbacks are GPU code and are passed over.
+//! egui hands every frame over as a list of clipped triangle meshes and a list of texture changes.
+//! [`Painter`] turns them into pixels with nothing but the processor, so a window opens on a
+//! machine without any graphics driver, and a test sees the same picture on every machine.
+//!
+//! The result follows egui's rendering rules as its OpenGL painter does:
+//!
+//! * positions are in points; one point is `pixels_per_point` pixels, and a pixel is drawn when
+//!   its centre lies inside the triangle, edges settled by the top-left rule, so two triangles
+//!   that share an edge neither leave a gap nor draw a pixel twice;
+//! * colours are sRGB bytes with premultiplied alpha; they are interpolated, multiplied with the
+//!   texture and blended as they are, without conversion to linear light;
+//! * clip rectangles are rounded to whole pixels.
+//!
+//! Two things are left out, because they need a graphics card: paint callbacks are skipped, and
+//! textures that ask for mipmaps are minified from their full size. A mesh whose texture was never
+//! set is skipped as well.
 
+mod canvas;
 mod image;
+mod mesh;
+mod pixel;
 mod quad;
 mod texture;
 mod triangle;
 
-use std::collections::HashMap;
+use std::collections::BTreeMap;
+use std::fmt;
 
-use egui::epaint::{ClippedPrimitive, Primitive, textures::TexturesDelta};
-use egui::{Color32, Mesh, Rect, TextureId};
+use egui::epaint::Primitive;
+use egui::{ClippedPrimitive, Color32, TextureId, TexturesDelta};
 
-pub use image::Image;
-use texture::Texture;
+use crate::canvas::{Canvas, Clip};
+use crate::texture::Texture;
 
-/// Paints frames of egui into an image, keeping the textures between frames.
+pub use crate::image::Image;
+
+/// Paints egui's tessellated output; owns the textures and the last picture.
 #[derive(Default)]
 pub struct Painter {
-    textures: HashMap<TextureId, Texture>,
+    textures: BTreeMap<TextureId, Texture>,
+    /// Textures that egui released with the last update. They may still be drawn in the frame that
+    /// came with the release, so they go with the next update.
+    released: Vec<TextureId>,
+    corners: Vec<mesh::Corner>,
     image: Image,
 }
 
-/// The pixels that a mesh may touch: left, top, right, bottom, the last two left out.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub(crate) struct Clip {
-    pub left: i32,
-    pub top: i32,
-    pub right: i32,
-    pub bottom: i32,
-}
-
 impl Painter {
-    /// A painter without textures.
+    /// A painter without textures and with an empty picture.
+    #[must_use]
     pub fn new() -> Self {
         Self::default()
     }
 
-    /// Takes over new and changed textures. Call before [`Self::paint`], and [`Self::free_textures`] after it.
-    pub fn set_textures(&mut self, delta: &TexturesDelta) {
-        for (id, change) in delta.set.iter().flat_map(|(id, changes)| changes.iter().map(move |change| (id, change))) {
-            match change.pos {
-                None => {
-                    self.textures.insert(*id, Texture::new(change));
-                }
-                Some(at) => {
-                    if let Some(texture) = self.textures.get_mut(id) {
-                        texture.update(at, change);
-                    }
-                }
+    /// Takes over the texture changes of one egui pass. Call it for every pass, before painting.
+    ///
+    /// The delta is left as it was; clear it before it is dropped, because egui asserts that in
+    /// debug builds. A released texture stays until the next call, since the frame that released
+    /// it may still show it.
+    pub fn update_textures(&mut self, delta: &TexturesDelta) {
+        for id in self.released.drain(..) {
+            self.textures.remove(&id);
+        }
+        // Changes of different textures do not touch each other, so the order of the map is free.
+        for (id, changes) in &delta.set {
+            for change in changes {
+                self.textures.entry(*id).or_default().apply(change);
             }
         }
+        self.released.extend(&delta.free);
     }
 
-    /// Forgets textures that are no longer needed, and empties the list of changes, which are all carried out by now.
-    pub fn free_textures(&mut self, mut delta: TexturesDelta) {
-        for id in &delta.free {
-            self.textures.remove(id);
-        }
-        delta.clear();
-    }
-
-    /// Paints one frame of `size` pixels on a ground of `clear`.
+    /// Paints one frame into the painter's own picture and returns it.
+    ///
+    /// `size_px` is width and height in pixels; either may be 0, which gives an empty picture.
+    /// `clear_color` is what shows where nothing is drawn.
     pub fn paint(
         &mut self,
-        size: [usize; 2],
+        size_px: [u32; 2],
         pixels_per_point: f32,
-        clear: Color32,
+        clear_color: Color32,
         primitives: &[ClippedPrimitive],
     ) -> &Image {
-        self.image.reset(size, clear);
-        for ClippedPrimitive { clip_rect, primitive } in primitives {
-            let Primitive::Mesh(mesh) = primitive else { continue };
-            let Some(texture) = self.textures.get(&mesh.texture_id) else { continue };
-            let clip = clip_of(*clip_rect, pixels_per_point, size);
-            if clip.left < clip.right && clip.top < clip.bottom {
-                paint_mesh(&mut self.image, mesh, texture, pixels_per_point, clip);
-            }
-        }
+        let mut image = std::mem::take(&mut self.image);
+        image.resize(size_px);
+        self.draw(image.canvas(), pixels_per_point, pixel::pack(clear_color), primitives);
+        self.image = image;
         &self.image
     }
-}
 
-/// Clip rectangles fall on whole pixels, rounded as egui's OpenGL backend rounds its scissors.
-fn clip_of(rect: Rect, pixels_per_point: f32, size: [usize; 2]) -> Clip {
-    let pixel = |points: f32, most: usize| (points * pixels_per_point).round().clamp(0.0, most as f32) as i32;
-    Clip {
-        left: pixel(rect.min.x, size[0]),
-        top: pixel(rect.min.y, size[1]),
-        right: pixel(rect.max.x, size[0]),
-        bottom: pixel(rect.max.y, size[1]),
+    /// Paints one frame into `buffer`: one `0x00RRGGBB` word per pixel, row by row from the top
+    /// left, as window surfaces take it. `clear_color` is taken as opaque.
+    ///
+    /// # Errors
+    /// Fails, and leaves the buffer alone, when it does not hold exactly width × height words.
+    pub fn paint_into(
+        &mut self,
+        buffer: &mut [u32],
+        size_px: [u32; 2],
+        pixels_per_point: f32,
+        clear_color: Color32,
+        primitives: &[ClippedPrimitive],
+    ) -> Result<(), WrongBufferLength> {
+        let [width, height] = size_px.map(|side| side as usize);
+        let needed = width.saturating_mul(height);
+        if buffer.len() != needed {
+            return Err(WrongBufferLength { needed, given: buffer.len() });
+        }
+        let canvas = Canvas::new(buffer, width, height);
+        let clear = pixel::pack(clear_color.to_opaque());
+        self.draw(canvas, pixels_per_point, clear, primitives);
+        for word in buffer {
+            *word &= 0x00ff_ffff;
+        }
+        Ok(())
+    }
+
+    fn draw(&mut self, mut canvas: Canvas<'_>, pixels_per_point: f32, clear: u32, primitives: &[ClippedPrimitive]) {
+        canvas.clear(clear);
+        for primitive in primitives {
+            let clip = Clip::from_points(primitive.clip_rect, pixels_per_point, &canvas);
+            if clip.is_empty() {
+                continue;
+            }
+            if let Primitive::Mesh(mesh) = &primitive.primitive
+                && let Some(texture) = self.textures.get(&mesh.texture_id)
+            {
+                mesh::paint(&mut canvas, clip, mesh, texture, pixels_per_point, &mut self.corners);
+            }
+        }
     }
 }
 
-fn paint_mesh(image: &mut Image, mesh: &Mesh, texture: &Texture, pixels_per_point: f32, clip: Clip) {
-    let mut indices = mesh.indices.as_slice();
-    while indices.len() >= 3 {
-        // Rectangles and glyphs come as two triangles round four vertices; they fill most of a window.
-        if let Some(quad) = quad::Quad::from_indices(mesh, indices, pixels_per_point) {
-            quad.paint(image, texture, clip);
-            indices = &indices[6..];
-            continue;
-        }
-        let corner = |at: usize| mesh.vertices.get(indices[at] as usize);
-        if let (Some(a), Some(b), Some(c)) = (corner(0), corner(1), corner(2)) {
-            triangle::paint(image, texture, [a, b, c], pixels_per_point, clip);
-        }
-        indices = &indices[3..];
+/// The buffer given to [`Painter::paint_into`] does not fit the size of the picture.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct WrongBufferLength {
+    /// Width × height of the picture, in words.
+    pub needed: usize,
+    /// Length of the buffer, in words.
+    pub given: usize,
+}
+
+impl fmt::Display for WrongBufferLength {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        write!(f, "the pixel buffer holds {} words, the picture needs {}", self.given, self.needed)
     }
 }
+
+impl std::error::Error for WrongBufferLength {}

@@ -1,132 +1,87 @@
-//! Upright rectangles of one colour: grounds, lines and glyphs. They come as two triangles round four vertices.
+//! Upright rectangles in one colour: plain areas and unscaled pictures, above all letters.
+//!
+//! They are most of what a window draws, and need no edge arithmetic. The pixels covered are those
+//! the two triangles would cover.
 
-use egui::epaint::Vertex;
-use egui::{Color32, Mesh, Pos2};
-
-use crate::Clip;
-use crate::image::{Image, over, times};
+use crate::canvas::{Canvas, Clip};
+use crate::mesh::{Corner, GRID};
+use crate::pixel;
 use crate::texture::Texture;
 
-/// An upright rectangle, in pixels, with the texture coordinates of its corners.
-pub(crate) struct Quad {
-    min: Pos2,
-    max: Pos2,
-    uv_min: Pos2,
-    uv_max: Pos2,
-    colour: Color32,
-}
+/// How far a texture edge may lie from a whole texel and still count as on it, in texels. Texture
+/// coordinates are single precision fractions of up to some thousand texels.
+const TEXEL_TOLERANCE: f32 = 1.0 / 64.0;
 
-impl Quad {
-    /// The rectangle that the first six indices make, if they make one.
-    ///
-    /// All four texture coordinates are looked at, for a turned text is an upright rectangle as well.
-    pub fn from_indices(mesh: &Mesh, indices: &[u32], pixels_per_point: f32) -> Option<Self> {
-        let [a, b, c, c2, b2, d] = *indices.first_chunk::<6>()?;
-        if c2 != c || b2 != b {
-            return None;
+/// Paints the corners left-top, right-top, left-bottom, right-bottom, if they form an upright
+/// rectangle that can be filled or copied. Returns false, with nothing drawn, if not.
+pub(crate) fn paint(canvas: &mut Canvas<'_>, clip: Clip, corners: &[Corner; 4], texture: &Texture) -> bool {
+    let [lt, rt, lb, rb] = corners;
+    let [left, top] = lt.grid;
+    let [right, bottom] = rb.grid;
+    let upright = rt.grid == [right, top] && lb.grid == [left, bottom];
+    let one_color = [rt, lb, rb].iter().all(|corner| corner.color == lt.color);
+    if !upright || !one_color || left > right || top > bottom {
+        return false;
+    }
+    // A pixel is covered when its centre is; a centre on the left or top edge counts as inside.
+    let first_centre = |edge: i64| (edge + GRID / 2 - 1).div_euclid(GRID);
+    let (x, y) = (first_centre(left), first_centre(top));
+    let visible = clip.meet(x, y, first_centre(right), first_centre(bottom));
+
+    if [rt, lb, rb].iter().all(|corner| corner.uv == lt.uv) {
+        let source = pixel::modulate(texture.spot(lt.uv), lt.color);
+        for row in visible.top..visible.bottom.max(visible.top) {
+            if visible.left < visible.right {
+                pixel::fill_over(canvas.run(row, visible.left, visible.right), source);
+            }
         }
-        let vertex = |index: u32| mesh.vertices.get(index as usize);
-        let (left_top, right_top, left_bottom, right_bottom) = (vertex(a)?, vertex(b)?, vertex(c)?, vertex(d)?);
-        let is_upright = is_grid([left_top, right_top, left_bottom, right_bottom], |vertex| vertex.pos)
-            && left_top.pos.x <= right_bottom.pos.x
-            && left_top.pos.y <= right_bottom.pos.y
-            && is_grid([left_top, right_top, left_bottom, right_bottom], |vertex| vertex.uv);
-        let colour = left_top.color;
-        let is_plain = [right_top, left_bottom, right_bottom].iter().all(|vertex| vertex.color == colour);
-        (is_upright && is_plain).then(|| Self {
-            min: left_top.pos * pixels_per_point,
-            max: right_bottom.pos * pixels_per_point,
-            uv_min: left_top.uv,
-            uv_max: right_bottom.uv,
-            colour,
-        })
+        return true;
     }
 
-    /// Paints it over what is there.
-    pub fn paint(&self, image: &mut Image, texture: &Texture, clip: Clip) {
-        let left = first_centre(self.min.x).max(clip.left);
-        let right = first_centre(self.max.x).min(clip.right);
-        let top = first_centre(self.min.y).max(clip.top);
-        let bottom = first_centre(self.max.y).min(clip.bottom);
-        if left >= right || top >= bottom || self.colour == Color32::TRANSPARENT {
-            return;
-        }
-        let [width, height] = texture.size();
-        let along = Mapping::new(self.min.x, self.max.x, self.uv_min.x * width, self.uv_max.x * width);
-        let down = Mapping::new(self.min.y, self.max.y, self.uv_min.y * height, self.uv_max.y * height);
-        if self.uv_min == self.uv_max {
-            let colour = times(self.colour, texture.sample(self.uv_min.x * width, self.uv_min.y * height));
-            for y in top..bottom {
-                fill(image.row(y, left, right), colour);
-            }
-            return;
-        }
-        if let (Some(from_x), Some(from_y)) = (along.whole_texels(), down.whole_texels()) {
-            for y in top..bottom {
-                let Some(texels) = texture.row(i64::from(y) + from_y) else { continue };
-                let first = i64::from(left) + from_x;
-                let texels = usize::try_from(first).ok().and_then(|first| texels.get(first..));
-                let Some(texels) = texels else { continue };
-                for (pixel, texel) in image.row(y, left, right).iter_mut().zip(texels) {
-                    if *texel != Color32::TRANSPARENT {
-                        *pixel = over(times(self.colour, *texel), *pixel);
-                    }
-                }
-            }
-            return;
-        }
-        for y in top..bottom {
-            let v = down.at(y);
-            for (x, pixel) in (left..).zip(image.row(y, left, right)) {
-                *pixel = over(times(self.colour, texture.sample(along.at(x), v)), *pixel);
+    let Some([texel_x, texel_y]) = unscaled(corners, texture) else {
+        return false;
+    };
+    if visible.is_empty() {
+        return true;
+    }
+    let from = texel_x + (visible.left - x) as usize;
+    let to = texel_x + (visible.right - x) as usize;
+    for row in visible.top..visible.bottom {
+        let texels = texture.run(texel_y + (row - y) as usize, from, to);
+        let pixels = canvas.run(row, visible.left, visible.right);
+        for (pixel, texel) in pixels.iter_mut().zip(texels) {
+            // Most of a letter's rectangle is empty.
+            if *texel != 0 {
+                *pixel = pixel::over(pixel::modulate(*texel, lt.color), *pixel);
             }
         }
     }
+    true
 }
 
-/// Whether four corners share two columns and two rows.
-fn is_grid([a, b, c, d]: [&Vertex; 4], of: impl Fn(&Vertex) -> Pos2) -> bool {
-    let (a, b, c, d) = (of(a), of(b), of(c), of(d));
-    a.x == c.x && b.x == d.x && a.y == b.y && c.y == d.y
-}
-
-/// The first pixel whose centre lies at or beyond an edge.
-pub(crate) fn first_centre(edge: f32) -> i32 {
-    (edge - 0.5).ceil() as i32
-}
-
-pub(crate) fn fill(row: &mut [Color32], colour: Color32) {
-    if colour.a() == 255 {
-        row.fill(colour);
-    } else if colour != Color32::TRANSPARENT {
-        for pixel in row {
-            *pixel = over(colour, *pixel);
-        }
+/// The left-top texel, when the rectangle shows whole texels on whole pixels, one on one.
+///
+/// All four texture corners are looked at: rotated text gives an upright rectangle as well, whose
+/// texture lies turned in it.
+fn unscaled(corners: &[Corner; 4], texture: &Texture) -> Option<[usize; 2]> {
+    let [lt, rt, lb, rb] = corners;
+    let not_turned = lt.uv[0] == lb.uv[0] && rt.uv[0] == rb.uv[0] && lt.uv[1] == rt.uv[1] && lb.uv[1] == rb.uv[1];
+    if !not_turned {
+        return None;
     }
+    let [width, height] = texture.size();
+    let [left, right] = whole_texels([lt.uv[0], rb.uv[0]], width)?;
+    let [top, bottom] = whole_texels([lt.uv[1], rb.uv[1]], height)?;
+    let on_pixels = lt.grid.iter().chain(&rb.grid).all(|side| side % GRID == 0);
+    let one_on_one = rb.grid[0] - lt.grid[0] == (right - left) as i64 * GRID
+        && rb.grid[1] - lt.grid[1] == (bottom - top) as i64 * GRID;
+    (on_pixels && one_on_one).then_some([left, top])
 }
 
-/// From pixels to texels along one axis.
-struct Mapping {
-    start: f32,
-    texel_start: f32,
-    step: f32,
-}
-
-impl Mapping {
-    fn new(from: f32, to: f32, texel_from: f32, texel_to: f32) -> Self {
-        let step = if to > from { (texel_to - texel_from) / (to - from) } else { 0.0 };
-        Self { start: from, texel_start: texel_from, step }
-    }
-
-    /// The place in texels of the centre of a pixel.
-    fn at(&self, pixel: i32) -> f32 {
-        self.texel_start + (pixel as f32 + 0.5 - self.start) * self.step
-    }
-
-    /// What to add to a pixel to get its texel, where both grids lie one on the other.
-    fn whole_texels(&self) -> Option<i64> {
-        let shift = self.texel_start - self.start;
-        let whole = shift.round();
-        ((self.step - 1.0).abs() < 1e-3 && (shift - whole).abs() < 2e-2).then_some(whole as i64)
-    }
+/// Both ends in texels, if they are whole, in order and inside the texture.
+fn whole_texels(ends: [f32; 2], side: usize) -> Option<[usize; 2]> {
+    let texels = ends.map(|end| end * side as f32);
+    let whole = texels.map(f32::round);
+    let close = texels.iter().zip(&whole).all(|(texel, whole)| (texel - whole).abs() <= TEXEL_TOLERANCE);
+    (close && whole[0] >= 0.0 && whole[0] <= whole[1] && whole[1] <= side as f32).then(|| whole.map(|end| end as usize))
 }

@@ -7,7 +7,7 @@ use std::path::{Path, PathBuf};
 use calc::plant_settings::PlantSettings;
 use calc::press::{Press, check_tag};
 
-use crate::read::{FileRefusal, PlantRefusal, read_text};
+use crate::read::{FileRefusal, LARGEST_FILE, PlantRefusal, read_text};
 use crate::{v1, write_whole};
 
 const SETTINGS: &str = "plant.ron";
@@ -88,6 +88,25 @@ pub fn open_press_file(path: &Path) -> Result<(PlantSettings, Press), PlantRefus
     Ok((open_settings(folder)?.0, press))
 }
 
+/// Changes one press file on disk: reads it, lets `edit` change the press, and saves it whole or not at all.
+///
+/// # Errors
+/// As [`open_press_file`] and [`save_press`], or what `edit` refuses; the file is then as it was.
+pub fn edit_press_file(
+    path: &Path,
+    edit: impl FnOnce(&mut Press) -> Result<(), String>,
+) -> Result<Press, PlantRefusal> {
+    let (_, mut press) = open_press_file(path)?;
+    let text = read_text(path)?;
+    let tag = press.tag.clone();
+    edit(&mut press).map_err(PlantRefusal::Folder)?;
+    let absolute = std::path::absolute(path).unwrap_or_else(|_| path.into());
+    let folder = absolute.parent().and_then(Path::parent).unwrap_or(Path::new("."));
+    let mut known = Known { settings: None, presses: BTreeMap::from([(tag, text)]) };
+    save_press(folder, &press, None, &mut known)?;
+    Ok(press)
+}
+
 /// Makes a new plant folder.
 ///
 /// # Errors
@@ -113,7 +132,11 @@ pub fn create(folder: &Path, settings: &PlantSettings) -> Result<Known, PlantRef
 /// A file that somebody else changed since it was read, or that cannot be written. The old file is then as it was.
 pub fn save_settings(folder: &Path, settings: &PlantSettings, known: &mut Known) -> Result<(), PlantRefusal> {
     let path = folder.join(SETTINGS);
-    let text = v1::settings_to_text(settings);
+    let text = head_comment(known.settings.as_deref()) + &v1::settings_to_text(settings);
+    if v1::settings_from_text(&path, &text)? != *settings {
+        let why = "What holds for the plant cannot be saved without loss. Nothing was changed.";
+        return Err(PlantRefusal::Folder(why.into()));
+    }
     check_unchanged(&path, known.settings.as_deref())?;
     write_whole(&path, text.as_bytes())?;
     known.settings = Some(text);
@@ -123,7 +146,8 @@ pub fn save_settings(folder: &Path, settings: &PlantSettings, known: &mut Known)
 /// Saves one press under its tag. Where it bore another tag before, the old file goes once the new one is in place.
 ///
 /// # Errors
-/// A file that somebody else changed since it was read, or that cannot be written. The old file is then as it was.
+/// A file that somebody else changed since it was read, a new tag whose file is there already, or a file that cannot be written.
+/// The old file is then as it was.
 pub fn save_press(
     folder: &Path,
     press: &Press,
@@ -135,7 +159,15 @@ pub fn save_press(
     fs::create_dir_all(&presses)
         .map_err(|error| PlantRefusal::Folder(format!("The folder {} cannot be made: {error}.", presses.display())))?;
     let path = press_path(folder, &press.tag);
-    let text = v1::press_to_text(press);
+    let known_text = known.presses.get(previous_tag.unwrap_or(&press.tag)).map(String::as_str);
+    let text = head_comment(known_text) + &v1::press_to_text(press);
+    if text.len() as u64 > LARGEST_FILE {
+        return Err(PlantRefusal::Folder(format!(
+            "The file of press {} would be {} bytes long; at most {LARGEST_FILE} are read again. Nothing was changed.",
+            press.tag,
+            text.len()
+        )));
+    }
     // What is written must mean what is on the screen; if it does not, the fault is ours and the old file stays.
     match v1::press_from_text(&path, &text) {
         Ok(back) if back == *press => {}
@@ -148,26 +180,38 @@ pub fn save_press(
         Err(refusal) => return Err(refusal.into()),
     }
     check_unchanged(&path, known.presses.get(&press.tag).map(String::as_str))?;
-    let moved_from = previous_tag.filter(|tag| *tag != press.tag);
+    // A tag that is no longer known was moved away by an earlier save.
+    let moved_from = previous_tag.filter(|tag| *tag != press.tag && known.presses.contains_key(*tag));
     if let Some(tag) = moved_from {
+        if path.exists() {
+            return Err(PlantRefusal::Folder(format!(
+                "Press {tag} cannot be saved as {}: {} is the file of another press. Nothing was changed; choose another tag, or save again once that press has left it.",
+                press.tag,
+                path.display()
+            )));
+        }
         check_unchanged(&press_path(folder, tag), known.presses.get(tag).map(String::as_str))?;
     }
     write_whole(&path, text.as_bytes())?;
     known.presses.insert(press.tag.clone(), text);
     if let Some(tag) = moved_from {
-        let old = press_path(folder, tag);
-        if old.exists() {
-            fs::remove_file(&old).map_err(|error| {
-                PlantRefusal::Folder(format!(
-                    "Press {} is saved, but its old file {} cannot be removed: {error}.",
-                    press.tag,
-                    old.display()
-                ))
-            })?;
-        }
         known.presses.remove(tag);
+        let old = press_path(folder, tag);
+        fs::remove_file(&old).map_err(|error| {
+            PlantRefusal::Folder(format!(
+                "Press {} is saved, but its old file {} cannot be removed: {error}. Remove it by hand, or it is listed as a press of its own.",
+                press.tag,
+                old.display()
+            ))
+        })?;
     }
     Ok(())
+}
+
+/// The comment lines that somebody wrote at the head of a file; they stay when the file is written again.
+fn head_comment(text: Option<&str>) -> String {
+    let lines = text.unwrap_or_default().lines();
+    lines.take_while(|line| line.starts_with("//")).map(|line| format!("{line}\n")).collect()
 }
 
 fn press_path(folder: &Path, tag: &str) -> PathBuf {

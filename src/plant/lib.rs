@@ -14,14 +14,18 @@
 mod comma;
 mod folder;
 mod read;
+mod readings_csv;
 mod records;
 mod samples;
 pub mod v1;
 mod wording;
 mod write;
 
-pub use folder::{Known, Plant, StoredPress, create, open, open_press_file, save_press, save_settings};
+pub use folder::{
+    Known, Plant, StoredPress, create, edit_press_file, open, open_press_file, save_press, save_settings,
+};
 pub use read::{FileRefusal, PlantRefusal};
+pub use readings_csv::{RowRefusal, export_readings, import_readings};
 pub use records::{KeptRecord, SealState, keep_record, kept_records};
 pub use samples::{SAMPLES, copy_samples};
 pub use write::write_whole;

@@ -1,7 +1,7 @@
 //! Reading a file with care: its size first, then its text, then its version, then its shape.
 
 use std::fmt;
-use std::fs::File;
+use std::fs::{self, File};
 use std::io::Read;
 use std::path::{Path, PathBuf};
 
@@ -79,11 +79,13 @@ impl From<FileRefusal> for PlantRefusal {
 /// Reads a text file of permitted size. A byte-order mark is taken off.
 pub fn read_text(path: &Path) -> Result<String, FileRefusal> {
     let refuse = |why: String| FileRefusal::whole(path, why);
-    let file = File::open(path).map_err(|error| refuse(format!("The file cannot be opened: {error}.")))?;
-    let size = file.metadata().map_err(|error| refuse(format!("The file cannot be read: {error}.")))?;
-    if !size.is_file() {
-        return Err(refuse("This is no file.".into()));
+    let open_error = |error| refuse(format!("The file cannot be opened: {error}."));
+    // Looked at before it is opened: opening a named pipe would wait for a writer for ever.
+    if !fs::metadata(path).map_err(open_error)?.is_file() {
+        return Err(refuse("This is no file. Take it out of the folder, or give the file that is meant.".into()));
     }
+    let file = File::open(path).map_err(open_error)?;
+    let size = file.metadata().map_err(|error| refuse(format!("The file cannot be read: {error}.")))?;
     if size.len() > LARGEST_FILE {
         return Err(refuse(format!(
             "The file is {} bytes long; at most {LARGEST_FILE} are read. It is no press or plant file.",
@@ -99,7 +101,10 @@ pub fn read_text(path: &Path) -> Result<String, FileRefusal> {
         return Err(refuse(format!("The file is longer than {LARGEST_FILE} bytes.")));
     }
     let text = String::from_utf8(bytes).map_err(|_| refuse("The file is no UTF-8 text.".into()))?;
-    Ok(text.strip_prefix('\u{feff}').map_or(text.clone(), str::to_owned))
+    Ok(match text.strip_prefix('\u{feff}') {
+        Some(behind_mark) => behind_mark.to_owned(),
+        None => text,
+    })
 }
 
 #[derive(Deserialize)]

@@ -77,7 +77,7 @@ pub fn stop_tests(flow: &mut Flow, input: &RecordInput, assessments: &[Assessmen
         |index: usize| assessments.iter().any(|one| one.governing.is_some_and(|governing| governing.test == index));
     for (index, test) in press.stop_tests.iter().enumerate() {
         let state = match (governs(index), in_force.contains(&index)) {
-            (true, _) => "; decides",
+            (true, _) => "; governs",
             (false, true) => "",
             (false, false) => "; superseded or overtaken",
         };
@@ -97,7 +97,7 @@ pub fn stop_tests(flow: &mut Flow, input: &RecordInput, assessments: &[Assessmen
             test.condition.counterbalance.map_or(String::new(), |pressure| format!(" Counterbalance {pressure}.")),
         ));
         let stops: Vec<String> = test.stops.iter().map(|stop| stop.digits()).collect();
-        flow.paragraph(&format!("Stops in ms: {}", if stops.is_empty() { "none".into() } else { stops.join("  ") }));
+        flow.paragraph(&format!("Stops in ms: {}", if stops.is_empty() { "none".into() } else { stops.join(" · ") }));
     }
     flow.space(1.5);
     flow.table(
@@ -310,7 +310,7 @@ pub fn readings(flow: &mut Flow, input: &RecordInput) {
         .map(|point| {
             let reading = &input.press.readings[point.reading];
             let stops: Vec<String> = reading.stops.iter().map(|stop| stop.digits()).collect();
-            vec![reading.at.to_string(), reading.by.clone(), stops.join("  "), format!("{:.2}", point.mean_ms)]
+            vec![reading.at.to_string(), reading.by.clone(), stops.join(" · "), format!("{:.2}", point.mean_ms)]
         })
         .collect();
     flow.table(&[words("date", 18.0), words("by", 14.0), words("stops ms", 50.0), number("mean ms", 12.0)], &rows);

@@ -81,7 +81,13 @@ pub fn limit_lines(press: &Press, plant: &PlantSettings, today: Date, series: &S
     };
     let mut line = |name, meaning: &str, growth: Time, consequence| {
         let mut steps = steps.clone();
-        let value = steps.put("limit", meaning, expr![start, "+", growth], start + growth, Source::ARITHMETIC);
+        let value = steps.put(
+            "limit",
+            meaning,
+            if growth < Time::ZERO { expr![start, "−", -growth] } else { expr![start, "+", growth] },
+            start + growth,
+            Source::ARITHMETIC,
+        );
         lines.push(LimitLine { name, value, consequence, safeguard: Some(tightest.safeguard), steps });
     };
     if tightest.spare > Time::ZERO {

@@ -54,6 +54,12 @@ pub fn standing(press: &Press, plant: &PlantSettings, today: Date) -> Option<Sta
     let days: Vec<f64> = series.points.iter().map(|point| point.day).collect();
     let means: Vec<f64> = series.points.iter().map(|point| point.mean_ms).collect();
     let change = change::change(press, &series);
-    let forecast = binding.and_then(|index| forecast_limit(&days, &means, lines[index].value.to_f64()).ok());
+    // A line through a step tells nothing of what comes; the readings of the new level do.
+    let from = match &change {
+        Change::Stepped { step, .. } => days.iter().position(|day| *day >= day_of(step.began)).unwrap_or(0),
+        _ => 0,
+    };
+    let forecast =
+        binding.and_then(|index| forecast_limit(&days[from..], &means[from..], lines[index].value.to_f64()).ok());
     Some(Standing { lines, binding, change, forecast, suspect: suspect(press, &series), series })
 }

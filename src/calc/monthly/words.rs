@@ -35,7 +35,7 @@ pub fn sentence(standing: &Standing) -> String {
     }
     let crossed = standing.crossed().map(|line| {
         format!(
-            "The latest reading is at or over the {} of {}: {}.",
+            "The latest reading is at or over \"{}\" ({}): {}.",
             line.name,
             time_text(line.value, Towards::Smaller),
             line.consequence.words()
@@ -96,31 +96,31 @@ fn signed(value: f64, unit: &str) -> String {
 
 /// When the limit is reached; `None` where the change already says all there is to say.
 pub fn forecast_sentence(forecast: &Forecast, line: &LimitLine) -> Option<String> {
-    let name = format!("{} of {}", line.name, time_text(line.value, Towards::Smaller));
+    let name = format!("\"{}\" ({})", line.name, time_text(line.value, Towards::Smaller));
     Some(match forecast {
         Forecast::AlreadyReached(Reached::Reading { day, .. }) => {
-            format!("A reading of {} reached the {name}.", date_of(*day)?)
+            format!("A reading of {} reached {name}.", date_of(*day)?)
         }
         Forecast::AlreadyReached(Reached::Line { .. }) => {
-            format!("The line through the readings has reached the {name}.")
+            format!("The line through the readings has reached {name}.")
         }
         Forecast::AlreadyReached(Reached::Bound { .. }) => {
-            format!("The next reading may already reach the {name} (upper 95 % bound).")
+            format!("The next reading may already reach {name} (upper 95 % bound).")
         }
         Forecast::Ahead { bound_day, line_day, .. } => {
             let by_line =
                 line_day.and_then(date_of).map_or(String::new(), |on| format!(", the line itself about {}", month(on)));
             format!(
-                "A reading may reach the {name} from about {} (upper 95 % bound){by_line}.",
+                "A reading may reach {name} from about {} (upper 95 % bound){by_line}.",
                 month(date_of(*bound_day)?)
             )
         }
         Forecast::CannotTell(NoForecast::TooFewPoints { .. } | NoForecast::OneDay) => return None,
         Forecast::CannotTell(NoForecast::SlopeNotDistinguishable { .. }) => {
-            format!("No date can be given for the {name}.")
+            format!("No date can be given for {name}.")
         }
-        Forecast::CannotTell(NoForecast::Falling { .. }) => format!("The readings fall away from the {name}."),
-        Forecast::CannotTell(NoForecast::BeyondHorizon { .. }) => format!("The {name} is more than ten years away."),
+        Forecast::CannotTell(NoForecast::Falling { .. }) => format!("The readings fall away from {name}."),
+        Forecast::CannotTell(NoForecast::BeyondHorizon { .. }) => format!("{name} is more than ten years away."),
     })
 }
 

@@ -109,6 +109,42 @@ fn a_step_is_told_with_its_month_and_the_event_near_it() {
     assert!(sentence(&standing).contains("in September 2025"), "{}", sentence(&standing));
 }
 
+/// Normal scatter from a fixed seed: the sum of twelve even numbers less six.
+struct Scatter(u64);
+
+impl Scatter {
+    fn next(&mut self) -> f64 {
+        let mut even = || {
+            self.0 = self.0.wrapping_mul(6_364_136_223_846_793_005).wrapping_add(1_442_695_040_888_963_407);
+            (self.0 >> 11) as f64 / (1_u64 << 53) as f64
+        };
+        (0..12).map(|_| even()).sum::<f64>() - 6.0
+    }
+}
+
+#[test]
+fn a_sound_brake_is_hardly_ever_told_to_have_stepped_and_a_real_step_is_found() {
+    let mut scatter = Scatter(20_261_201);
+    let mut count = |readings: usize, step_us: f64, runs: usize| {
+        let mut stepped = 0;
+        for _ in 0..runs {
+            let means: Vec<i64> = (0..readings)
+                .map(|month| {
+                    let level = if month >= readings / 2 { 183_700.0 + step_us } else { 183_700.0 };
+                    (level + 1_500.0 * scatter.next()) as i64
+                })
+                .collect();
+            let found = standing(&with_readings(&means), &plant(), TODAY).unwrap();
+            stepped += usize::from(matches!(found.change, Change::Stepped { .. }));
+        }
+        stepped as f64 / runs as f64
+    };
+    for readings in [12, 24, 60] {
+        assert!(count(readings, 0.0, 400) < 0.02, "{readings} readings");
+    }
+    assert!(count(24, 6_000.0, 100) > 0.95);
+}
+
 #[test]
 fn an_event_that_changes_the_brake_begins_a_new_series() {
     let mut press = with_readings(&[190_000, 191_000, 192_000, 193_000, 194_000]);

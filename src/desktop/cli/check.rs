@@ -19,7 +19,7 @@ pub fn check(args: &CheckArgs) -> Outcome {
     let mut rows = Vec::new();
     let mut values = Vec::new();
     for path in &args.paths {
-        for (plant, press) in presses(path, &mut outcome) {
+        for (plant, press) in presses(path, &mut rows, &mut outcome) {
             check_press(args, &plant, &press, &mut rows, &mut values, &mut outcome);
         }
     }
@@ -34,10 +34,16 @@ pub fn check(args: &CheckArgs) -> Outcome {
 }
 
 /// The presses of a plant folder or a press file; what cannot be read is refused and the rest is still checked.
-fn presses(path: &Path, outcome: &mut Outcome) -> Vec<(PlantSettings, Press)> {
+fn presses(path: &Path, rows: &mut Vec<Vec<String>>, outcome: &mut Outcome) -> Vec<(PlantSettings, Press)> {
     if path.is_dir() {
         return match plant::open(path) {
             Ok(plant) => {
+                if plant.presses.is_empty() {
+                    // Where no press is, nothing holds.
+                    outcome.at_least(1);
+                    let words = format!("No press is entered in {}.", path.display());
+                    rows.push(vec![Answer::Unproven.word().into(), "(none)".into(), words]);
+                }
                 let mut presses = Vec::new();
                 for stored in plant.presses {
                     match stored.content {
@@ -86,3 +92,6 @@ fn check_press(
         values.push(json::assessment(&press.tag, safeguard, &found));
     }
 }
+
+#[cfg(test)]
+mod tests;

@@ -1,6 +1,7 @@
 //! `slidehalt distance`: the distance that a rule set asks for, worked out step by step from figures on the command line.
 
 mod read;
+mod unsaid;
 
 use calc::inverse;
 use calc::round::{Towards, length_text, time_text};
@@ -68,7 +69,7 @@ fn tell(
             "strict": demand.strict,
             "installed_um": json::um(asked.installed),
             "spare_um": json::um(asked.installed.map(|installed| installed - demand.required)),
-            "stopping_us": demand.make_up.map(|_| asked.case.times.stopping.base()),
+            "stopping_us": asked.case.kind.needs_stop().then(|| asked.case.times.stopping.base()),
             "allowed_stopping_us": json::us(allowed.and_then(|allowed| allowed.stopping)),
             "allowed_monitor_us": json::us(allowed.and_then(|allowed| allowed.monitor)),
             "answer": answer.map(Answer::key),
@@ -78,7 +79,10 @@ fn tell(
         outcome.line(serde_json::to_string_pretty(&value).unwrap_or_default());
         return;
     }
-    outcome.line(format!("{}, {}: {}", asked.rules.title(), asked.rules.edition(), asked.case.kind.words()));
+    let (title, edition) = (asked.rules.title(), asked.rules.edition());
+    // The title of an ISO standard already names its edition.
+    let rules = if edition.starts_with(title) { edition.to_owned() } else { format!("{title}, {edition}") };
+    outcome.line(format!("{rules}: {}", asked.case.kind.words()));
     outcome.line("");
     steps_table(steps, unit, outcome);
     outcome.line("");
@@ -123,10 +127,15 @@ fn tell_none(args: &DistanceArgs, asked: &Asked, none: &NoDemand, steps: &Worked
             "safeguard": asked.case.kind.key(),
             "required_um": null,
             "strict": null,
+            "installed_um": json::um(asked.installed),
+            "spare_um": null,
+            "stopping_us": asked.case.kind.needs_stop().then(|| asked.case.times.stopping.base()),
             "allowed_stopping_us": null,
+            "allowed_monitor_us": null,
             "answer": answer.key(),
             "reason": none.words(),
             "steps": json::steps(steps, unit(args)),
+            "remarks": asked.remarks,
         });
         outcome.line(serde_json::to_string_pretty(&value).unwrap_or_default());
     }

@@ -1,7 +1,7 @@
 //! What a command prints and how it ends.
 
 use std::fmt::Write as _;
-use std::io::Write as _;
+use std::io::ErrorKind;
 use std::process::ExitCode;
 
 /// What a command prints and how it ends.
@@ -32,11 +32,23 @@ impl Outcome {
         self.code = self.code.max(code);
     }
 
-    /// Prints it. A reader that has gone away is no fault of the command.
+    /// Prints it.
     pub fn print(self) -> ExitCode {
-        let _ = std::io::stdout().write_all(self.out.as_bytes());
-        let _ = std::io::stderr().write_all(self.err.as_bytes());
-        ExitCode::from(self.code)
+        let code = self.write(&mut std::io::stdout().lock(), &mut std::io::stderr().lock());
+        ExitCode::from(code)
+    }
+
+    /// Writes it and gives the exit code. A reader that has gone away is no fault of the command; an output that takes no more,
+    /// such as a full disk, is.
+    fn write(mut self, out: &mut dyn std::io::Write, err: &mut dyn std::io::Write) -> u8 {
+        if let Err(error) = out.write_all(self.out.as_bytes()).and_then(|()| out.flush())
+            && error.kind() != ErrorKind::BrokenPipe
+        {
+            self.refuse(format!("The output cannot be written: {error}."));
+        }
+        // Where even the messages cannot be written, the exit code is all that is left to tell.
+        let _ = err.write_all(self.err.as_bytes());
+        self.code
     }
 }
 
@@ -59,4 +71,39 @@ pub fn columns(rows: &[Vec<String>]) -> Vec<String> {
             line.trim_end().to_owned()
         })
         .collect()
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    struct Failing(ErrorKind);
+
+    impl std::io::Write for Failing {
+        fn write(&mut self, _: &[u8]) -> std::io::Result<usize> {
+            Err(self.0.into())
+        }
+
+        fn flush(&mut self) -> std::io::Result<()> {
+            Ok(())
+        }
+    }
+
+    #[test]
+    fn a_reader_gone_away_is_no_fault_and_a_full_disk_is() {
+        let mut outcome = Outcome::default();
+        outcome.line("Holds");
+        for (kind, code) in [(ErrorKind::BrokenPipe, 0), (ErrorKind::StorageFull, 2)] {
+            let mut err = Vec::new();
+            assert_eq!(outcome.clone().write(&mut Failing(kind), &mut err), code, "{kind}");
+            assert_eq!(err.is_empty(), code == 0);
+        }
+        assert_eq!(outcome.write(&mut Vec::new(), &mut Failing(ErrorKind::BrokenPipe)), 0);
+    }
+
+    #[test]
+    fn columns_stand_two_spaces_apart_and_lines_end_with_their_text() {
+        let rows = [["a", "bcd", "e"], ["fgh", "", ""], ["Ω", "–", "x y"]].map(|row| row.map(str::to_owned).to_vec());
+        assert_eq!(columns(&rows), ["a    bcd  e", "fgh", "Ω    –    x y"]);
+    }
 }

@@ -59,3 +59,68 @@ pub fn stops(args: &StopsArgs) -> Outcome {
     }
     outcome
 }
+
+#[cfg(test)]
+mod tests {
+    use crate::cli::run_line;
+
+    #[test]
+    fn stops_gives_the_handbook_figures() {
+        // k (10, 0.95, 0.95) = 2.911 and k (10, 0.99, 0.95) = 3.981, tables of ISO 16269-6.
+        let outcome = run_line("stops 182 185 181 184 186 183 182 187 184 183 --json");
+        let value: serde_json::Value = serde_json::from_str(&outcome.out).unwrap();
+        for (key, expected, tolerance) in [
+            ("mean_ms", 183.7, 1e-9),
+            ("s_ms", 1.888_562, 1e-6),
+            ("greatest_ms", 187.0, 0.0),
+            ("mean_plus_3_s_ms", 189.366, 5e-4),
+            ("tolerance_95_95_ms", 189.198, 5e-4),
+            ("tolerance_99_95_ms", 191.219, 5e-4),
+            ("k_95_95", 2.911, 5e-4),
+            ("k_99_95", 3.981, 5e-4),
+        ] {
+            let found = value[key].as_f64().unwrap();
+            assert!((found - expected).abs() <= tolerance, "{key}: {found}");
+        }
+        assert_eq!(run_line("stops 182 x").code, 2);
+        assert_eq!(run_line("stops 182").code, 0);
+    }
+
+    #[test]
+    fn factors_of_other_numbers_of_stops() {
+        // k (25, 0.99, 0.95) = 3.158, tables of ISO 16269-6.
+        let stops: Vec<String> = (0..25).map(|index| (180 + index % 7).to_string()).collect();
+        let outcome = run_line(&format!("stops {} --json", stops.join(" ")));
+        let value: serde_json::Value = serde_json::from_str(&outcome.out).unwrap();
+        assert!((value["k_99_95"].as_f64().unwrap() - 3.158).abs() <= 5e-4);
+        assert_eq!(value["n"], 25);
+    }
+
+    #[test]
+    fn the_text_for_people() {
+        let outcome = run_line("stops 182 185 181 184 186 183 182 187 184 183");
+        let expected = "\
+stops                          10
+mean                           183.700 ms
+s                              1.888562 ms
+longest                        187.000 ms
+mean + 3 s                     189.366 ms
+95 % of stops, 95 % confidence  189.198 ms   k = 2.9110
+99 % of stops, 95 % confidence  191.219 ms   k = 3.9811
+";
+        let plain = |text: &str| text.split_whitespace().collect::<Vec<_>>().join(" ");
+        assert_eq!(plain(&outcome.out), plain(expected));
+        assert_eq!((outcome.code, outcome.err.as_str()), (0, ""));
+    }
+
+    #[test]
+    fn bad_stops_are_all_refused() {
+        for (line, count) in [("stops 0 20000 -5 12x 1.2.3 1,234.5 NaN", 7), ("stops 182,5 x", 1)] {
+            let outcome = run_line(line);
+            assert_eq!((outcome.code, outcome.out.as_str()), (2, ""), "{line}");
+            assert_eq!(outcome.err.lines().count(), count, "{line}: {}", outcome.err);
+        }
+        let comma = run_line("stops 182,5 183.5 --json");
+        assert_eq!(serde_json::from_str::<serde_json::Value>(&comma.out).unwrap()["mean_ms"], 183.0);
+    }
+}

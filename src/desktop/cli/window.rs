@@ -3,9 +3,10 @@
 use std::path::{Path, PathBuf};
 use std::process::ExitCode;
 
-use super::today;
-use crate::host::{self, HostError, Renderer, RendererChoice, WindowApp};
+use super::{now, today};
+use crate::host::{self, HostError, RendererChoice, RendererReport, WindowApp, WindowOptions};
 use crate::window::app::{App, Given};
+use crate::window::theme;
 
 /// Opens the window on a plant folder, or on a copy of the sample presses.
 pub fn open(folder: Option<&Path>, choice: RendererChoice) -> ExitCode {
@@ -20,11 +21,24 @@ pub fn open(folder: Option<&Path>, choice: RendererChoice) -> ExitCode {
         },
     };
     let shown = folder.clone();
-    let make = Box::new(move |context: &egui::Context, renderer: &Renderer| -> Box<dyn WindowApp> {
-        let given = Given { today: today(), version: env!("CARGO_PKG_VERSION"), renderer: renderer.words(), is_sample };
-        Box::new(App::new(context, given, Some(&shown)))
-    });
-    match host::run(choice, "Slidehalt", make) {
+    let options = WindowOptions {
+        title: "Slidehalt".into(),
+        app_id: "slidehalt".into(),
+        initial_size: egui::vec2(1280.0, 800.0),
+        minimum_size: egui::vec2(900.0, 600.0),
+        icon: None,
+    };
+    let make = move |_: &egui::Context, renderer: &RendererReport| -> Box<dyn WindowApp> {
+        let given = Given {
+            today: today(),
+            clock: now,
+            version: env!("CARGO_PKG_VERSION"),
+            renderer: format!("{renderer}."),
+            is_sample,
+        };
+        Box::new(App::new(given, Some(&shown)))
+    };
+    match host::run(choice, &options, theme::install, make) {
         Ok(()) => ExitCode::SUCCESS,
         Err(error) => {
             eprintln!("{error}");

@@ -1,98 +1,132 @@
-//! Opens a window on any machine: with OpenGL where a graphics processor serves it, else with our own painter, on one event loop.
+//! The window: opens on any machine with a display, with or without a graphics card.
 //!
-//! A process may build one event loop only. So it is built here, OpenGL is tried on it, and where that fails or turns out to
-//! be a program that imitates a graphics processor, the same loop runs the window that paints on the CPU, which is several
-//! times lighter.
+//! [`run`] opens one window and runs a [`WindowApp`] in it until the window closes. The window is
+//! drawn with OpenGL where a graphics card provides it, and by the processor where OpenGL is
+//! missing or is itself computed by the processor, which is several times slower than the painter
+//! of this program. The app is the same in both cases, and is told which it is.
 
 mod cpu;
+mod display;
 mod error;
-mod event_loop;
 mod gl;
-mod listener;
+pub mod journal;
+mod renderer;
+mod start;
 
 use std::cell::RefCell;
-use std::rc::Rc;
+
+use egui::{Context, IconData, Ui, Vec2, ViewportBuilder, ViewportCommand};
 
 pub use error::HostError;
-pub use listener::dialog_failed;
+pub use renderer::{Renderer, RendererChoice, RendererReason, RendererReport};
 
-/// Which renderer the user asked for.
-#[derive(Clone, Copy, PartialEq, Eq, Debug, Default, clap::ValueEnum)]
-pub enum RendererChoice {
-    /// OpenGL where a graphics processor serves it, else the CPU.
-    #[default]
-    Auto,
-    /// OpenGL, whoever serves it.
-    Gl,
-    /// The CPU.
-    Cpu,
-}
+/// What a window shows and how it answers.
+pub trait WindowApp {
+    /// Runs before every [`Self::ui`], and alone while the window is hidden and a repaint was
+    /// requested. Nothing may be shown from here.
+    fn logic(&mut self, ctx: &Context) {
+        _ = ctx;
+    }
 
-/// Which renderer paints, and why.
-#[derive(Clone, PartialEq, Eq, Debug)]
-pub enum Renderer {
-    /// OpenGL, with the name of what serves it.
-    Gl(String),
-    /// The CPU, with the reason in words.
-    Cpu(String),
-}
+    /// Shows the contents. The `Ui` fills the window and has no margin and no background. egui may
+    /// run it twice for one frame.
+    fn ui(&mut self, ui: &mut Ui);
 
-impl Renderer {
-    /// What the status line says, once.
-    pub fn words(&self) -> String {
-        match self {
-            Self::Gl(name) => format!("Painting with OpenGL ({name})."),
-            Self::Cpu(why) => format!("Painting on the processor: {why}."),
-        }
+    /// Whether the window may close now. Asked when the user closes the window and when the app
+    /// itself sends [`ViewportCommand::Close`].
+    ///
+    /// An app with unsaved work answers `false`, shows its question in [`Self::ui`], and later
+    /// sends `ViewportCommand::Close` and answers `true`. The question may be put several times
+    /// before the next frame is shown. A hidden window is brought back when the answer is no.
+    fn close_requested(&mut self, ctx: &Context) -> bool {
+        _ = ctx;
+        true
     }
 }
 
-/// What the host runs in its window.
-pub trait WindowApp {
-    /// Work that draws nothing, before every frame.
-    fn logic(&mut self, context: &egui::Context);
-
-    /// Draws one frame. A close request stands in `context.input(|input| input.viewport().close_requested())`; the window
-    /// closes unless the app answers with `ViewportCommand::CancelClose`.
-    fn ui(&mut self, ui: &mut egui::Ui);
+/// How the window looks before the app shows anything in it.
+#[derive(Clone, Debug)]
+pub struct WindowOptions {
+    /// Text of the title bar. The app may change it with [`ViewportCommand::Title`].
+    pub title: String,
+    /// Name by which the desktop knows the program: the base name of its `.desktop` file.
+    pub app_id: String,
+    /// Size of the contents when the window opens, in points.
+    pub initial_size: Vec2,
+    /// The smallest size the user can give the contents, in points.
+    pub minimum_size: Vec2,
+    /// Picture for title bar and task list; none leaves it to the desktop.
+    pub icon: Option<IconData>,
 }
 
-/// Makes the app once its window is there.
-pub type MakeApp<'a> = Box<dyn FnOnce(&egui::Context, &Renderer) -> Box<dyn WindowApp + 'a> + 'a>;
+impl WindowOptions {
+    fn viewport(&self) -> ViewportBuilder {
+        ViewportBuilder::default()
+            .with_title(&self.title)
+            .with_app_id(&self.app_id)
+            .with_inner_size(self.initial_size)
+            .with_min_inner_size(self.minimum_size)
+            // An empty icon keeps the library from showing its own.
+            .with_icon(self.icon.clone().unwrap_or_default())
+    }
+}
 
-/// Opens the window and runs it until it is closed.
+/// Makes the app, once the renderer is settled.
+type MakeApp<'a> = Box<dyn FnOnce(&Context, &RendererReport) -> Box<dyn WindowApp + 'a> + 'a>;
+
+/// The one [`MakeApp`] of a run: offered to OpenGL first and, if unused, to the processor.
+type Offer<'a> = RefCell<Option<MakeApp<'a>>>;
+
+/// Opens the window, runs the app in it, and returns when the window has closed.
+///
+/// `setup` sets fonts and style; it runs once, before the first frame and before `make_app`, which
+/// is given the context (to request repaints from other threads) and the renderer in use. Call
+/// this from the main thread and at most once in a process: window systems allow no second
+/// connection.
 ///
 /// # Errors
-/// No display, a missing library, or OpenGL asked for and not to be had; in words for the user.
-pub fn run<'a>(choice: RendererChoice, title: &str, make_app: MakeApp<'a>) -> Result<(), HostError> {
-    error::without_panic(move || run_guarded(choice, title, make_app))
-}
-
-fn run_guarded<'a>(choice: RendererChoice, title: &str, make_app: MakeApp<'a>) -> Result<(), HostError> {
-    let mut event_loop = event_loop::build()?;
-    let make_app = Rc::new(RefCell::new(Some(make_app)));
-    let why_cpu = if choice == RendererChoice::Cpu {
-        "as asked for".to_owned()
-    } else {
-        match gl::run(&mut event_loop, title, choice, make_app.clone()) {
-            Ok(()) => return Ok(()),
-            Err(why) if choice == RendererChoice::Gl => return Err(HostError::NoGl(why)),
-            Err(why) => why,
-        }
+/// Fails when no window can be opened, and when the window or the graphics card is lost. The error
+/// is a sentence for the user. When an X server ends while the window is open, its library ends
+/// the process by itself, with status 1.
+pub fn run<'a>(
+    choice: RendererChoice,
+    options: &WindowOptions,
+    setup: impl FnOnce(&Context) + 'a,
+    make_app: impl FnOnce(&Context, &RendererReport) -> Box<dyn WindowApp + 'a> + 'a,
+) -> Result<(), HostError> {
+    journal::listen();
+    let mut event_loop = display::connect()?;
+    let make: MakeApp<'a> = Box::new(|ctx, report| {
+        // One native window: what egui would open beside it goes inside it.
+        ctx.set_embed_viewports(true);
+        setup(ctx);
+        make_app(ctx, report)
+    });
+    let offer = RefCell::new(Some(make));
+    let reason = match choice {
+        RendererChoice::Cpu => RendererReason::AskedFor,
+        RendererChoice::Auto | RendererChoice::Gl => match gl::run(&mut event_loop, options, choice, &offer)? {
+            gl::Outcome::Closed => return Ok(()),
+            gl::Outcome::NotUsed(reason) => reason,
+        },
     };
-    let make_app = make_app.borrow_mut().take();
-    match make_app {
-        Some(make_app) => cpu::run(&mut event_loop, title, Renderer::Cpu(why_cpu), make_app),
-        // OpenGL had begun and broke off later; the app and what was typed into it are gone.
-        None => Err(HostError::Other(why_cpu)),
-    }
+    journal::errors_only();
+    cpu::run(&mut event_loop, options, reason, &offer)
 }
 
-/// How the window begins.
-fn viewport(title: &str) -> egui::ViewportBuilder {
-    egui::ViewportBuilder::default()
-        .with_title(title)
-        .with_app_id("slidehalt")
-        .with_inner_size([1280.0, 800.0])
-        .with_min_inner_size([900.0, 600.0])
+/// The part of a frame that runs even while the window is hidden, the same for both renderers.
+fn run_logic(app: &mut dyn WindowApp, ctx: &Context) {
+    let (close_requested, minimized) = ctx.input(|input| {
+        let window = input.viewport();
+        (window.close_requested(), window.minimized == Some(true))
+    });
+    if close_requested && !app.close_requested(ctx) {
+        ctx.send_viewport_cmd(ViewportCommand::CancelClose);
+        if minimized {
+            // The app has something to ask; an invisible question helps nobody.
+            ctx.send_viewport_cmd(ViewportCommand::Minimized(false));
+            ctx.send_viewport_cmd(ViewportCommand::Focus);
+        }
+    }
+    app.logic(ctx);
 }

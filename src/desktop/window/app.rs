@@ -1,30 +1,35 @@
 //! The application: what is open, how it is shown, what is being typed; and the three steps of a frame: logic, views, commands.
 
+use std::collections::BTreeMap;
 use std::path::{Path, PathBuf};
 
 use calc::press::Press;
 use calc::units::LengthUnit;
 use egui::{CentralPanel, Context, Frame, Margin, Panel, Ui, ViewportCommand};
 use figure::Role;
-use jiff::civil::Date;
+use jiff::civil::{Date, DateTime};
 
 use super::commands::Command;
 use super::context::SheetContext;
 use super::dialogs::{self, Dialog, Then};
+use super::header::NoResult;
 use super::jobs::Jobs;
+use super::overview::{OverviewDraft, overview_ui};
 use super::sheets::{Sheet, SheetDrafts};
 use super::wishes::{Wish, Wishes};
-use super::{header, press_list, status, theme};
+use super::{bar, header, press_list, status, theme};
 use crate::document::Act;
 use crate::host::WindowApp;
 use crate::results::Results;
 use crate::saving::{self, OpenPlant};
 
-/// What the caller gives: nothing here reads a clock or the environment.
-#[derive(Clone, PartialEq, Debug)]
+/// What the caller gives: nothing here reads a clock or the environment by itself.
+#[derive(Clone, Debug)]
 pub struct Given {
-    /// Today.
+    /// Today. The window may stay open over midnight; before each frame it follows the clock.
     pub today: Date,
+    /// The clock on the wall.
+    pub clock: fn() -> DateTime,
     /// The version of the program.
     pub version: &'static str,
     /// What is said once about the renderer.
@@ -39,18 +44,20 @@ pub struct ViewState {
     pub press: Option<String>,
     /// The safeguard of the reach strip, by place; the gravest where none was chosen.
     pub safeguard: Option<usize>,
+    /// Whether every press is shown in one table in place of one press.
+    pub is_overview: bool,
     /// The shown sheet.
     pub sheet: Sheet,
     /// The unit of lengths.
     pub unit: LengthUnit,
-    /// Whether the dark theme is shown.
-    pub is_dark: bool,
     /// Whether the list runs by tag, not by gravity.
     pub is_by_tag: bool,
     /// What is typed into the find box.
     pub find: String,
     /// Whether the find box is to get the cursor.
     pub focus_find: bool,
+    /// Whether the entry of the shown press is to get the cursor.
+    pub focus_entry: bool,
 }
 
 /// The application.
@@ -59,7 +66,11 @@ pub struct App {
     open: Option<OpenPlant>,
     results: Results,
     view: ViewState,
+    /// What is being typed for the shown press.
     drafts: SheetDrafts,
+    /// What is being typed for the others, by tag: it waits there.
+    shelved: BTreeMap<String, SheetDrafts>,
+    overview: OverviewDraft,
     dialog: Option<Dialog>,
     jobs: Jobs,
     messages: status::Messages,
@@ -67,8 +78,7 @@ pub struct App {
 
 impl App {
     /// The application with a plant folder opened, or with the reason why it cannot be.
-    pub fn new(context: &Context, given: Given, folder: Option<&Path>) -> Self {
-        theme::install(context);
+    pub fn new(given: Given, folder: Option<&Path>) -> Self {
         let mut app = Self {
             messages: status::Messages::new(&given.renderer),
             given,
@@ -77,19 +87,22 @@ impl App {
             view: ViewState {
                 press: None,
                 safeguard: None,
+                is_overview: false,
                 sheet: Sheet::StopTests,
                 unit: LengthUnit::Millimetre,
-                is_dark: false,
                 is_by_tag: false,
                 find: String::new(),
                 focus_find: false,
+                focus_entry: false,
             },
             drafts: SheetDrafts::default(),
+            shelved: BTreeMap::new(),
+            overview: OverviewDraft::default(),
             dialog: None,
             jobs: Jobs::default(),
         };
-        if let Some(folder) = folder {
-            app.open_folder(folder);
+        if let Some(Err(why)) = folder.map(|folder| app.open_folder(folder)) {
+            app.messages.refuse(why);
         }
         app
     }
@@ -104,20 +117,20 @@ impl App {
         &self.view
     }
 
-    fn open_folder(&mut self, folder: &Path) {
-        match saving::open(folder) {
-            Ok(plant) => {
-                self.open = Some(plant);
-                self.view.press = None;
-                self.view.safeguard = None;
-                self.drafts = SheetDrafts::default();
-                self.dialog = None;
-                self.messages.clear();
-                self.follow();
-                self.view.press = press_list::order(&self.results, &self.view).first().map(|tag| (*tag).to_owned());
-            }
-            Err(refusal) => self.messages.refuse(refusal.to_string()),
-        }
+    /// Opens a plant folder; where that fails, the plant that was open stays.
+    fn open_folder(&mut self, folder: &Path) -> Result<(), String> {
+        let plant = saving::open(folder).map_err(|refusal| refusal.to_string())?;
+        self.open = Some(plant);
+        self.view.press = None;
+        self.view.safeguard = None;
+        self.view.find.clear();
+        self.drafts = SheetDrafts::default();
+        self.shelved.clear();
+        self.dialog = None;
+        self.messages.other_plant();
+        self.follow();
+        self.view.press = press_list::order(&self.results, &self.view).first().map(|tag| (*tag).to_owned());
+        Ok(())
     }
 
     fn follow(&mut self) {
@@ -127,11 +140,23 @@ impl App {
     }
 
     fn show_press(&mut self, tag: String) {
-        if self.view.press.as_deref() != Some(&tag) {
-            self.view.safeguard = None;
-            // Drafts belong to the press whose fields they were typed into; their identities carry its tag, so they wait there.
-            self.view.press = Some(tag);
+        self.view.is_overview = false;
+        self.turn_to(Some(tag));
+    }
+
+    /// Shows a press, or none. What is typed for the press that was shown is laid aside until it is shown again; only who signs
+    /// and onto what paper goes along.
+    fn turn_to(&mut self, tag: Option<String>) {
+        if self.view.press == tag {
+            return;
         }
+        let mut drafts = tag.as_ref().and_then(|tag| self.shelved.remove(tag)).unwrap_or_default();
+        std::mem::swap(&mut drafts.records, &mut self.drafts.records);
+        let drafts = std::mem::replace(&mut self.drafts, drafts);
+        if let Some(was) = std::mem::replace(&mut self.view.press, tag) {
+            self.shelved.insert(was, drafts);
+        }
+        self.view.safeguard = None;
     }
 
     fn step_press(&mut self, step: isize) {
@@ -152,10 +177,11 @@ impl App {
         match open.save() {
             Ok(()) => {
                 self.messages.clear();
-                self.messages.tell(format!(
-                    "Saved to {}.",
-                    open.history.document().folder.as_deref().unwrap_or(Path::new("")).display()
-                ));
+                let folder = open.history.document().folder.as_deref().unwrap_or(Path::new("")).display();
+                let is_whole =
+                    self.drafts.refused().is_empty() && self.shelved.values().all(|one| one.refused().is_empty());
+                let rest = if is_whole { "" } else { " Entries that cannot be taken are not part of it." };
+                self.messages.saved((self.given.clock)(), format!("Saved to {folder}.{rest}"));
                 true
             }
             Err(refusals) => {
@@ -177,16 +203,25 @@ impl App {
         }
     }
 
-    fn go_on(&mut self, then: Then) {
+    /// Does what was asked; where it cannot be done, the reason comes back.
+    fn attempt(&mut self, then: Then) -> Result<(), String> {
         match then {
             Then::Close => self.jobs.is_closing = true,
-            Then::Open(folder) => self.open_folder(&folder),
+            Then::Open(folder) => self.open_folder(&folder)?,
             Then::AskOpen => self.dialog = Some(Dialog::open(self.folder())),
             Then::AskNew => self.dialog = Some(Dialog::new_plant()),
-            Then::Create { folder, settings } => match plant::create(&folder, &settings) {
-                Ok(_) => self.open_folder(&folder),
-                Err(refusal) => self.messages.refuse(refusal.to_string()),
-            },
+            Then::Create { folder, settings } => {
+                plant::create(&folder, &settings).map_err(|refusal| refusal.to_string())?;
+                self.open_folder(&folder)?;
+            }
+        }
+        Ok(())
+    }
+
+    fn go_on(&mut self, then: Then) {
+        if let Err(why) = self.attempt(then) {
+            self.messages.clear();
+            self.messages.refuse(why);
         }
     }
 
@@ -211,12 +246,15 @@ impl App {
                             self.show_press(tag);
                             self.view.sheet = Sheet::Press;
                         } else if let Some(shown) = self.view.press.clone().filter(|tag| !after.contains(tag)) {
-                            // The shown press got another tag: go with it.
+                            // The shown press got another tag: go with it, and keep what is being typed for it.
                             let renamed = after.into_iter().find(|tag| !before.contains(tag));
                             self.view.press = renamed.or(Some(shown));
                         }
                     }
-                    Err(refusal) => self.messages.refuse(refusal.to_string()),
+                    Err(refusal) => {
+                        self.messages.clear();
+                        self.messages.refuse(refusal.to_string());
+                    }
                 }
             }
             Wish::Undo => self.travel(|open| open.history.undo()),
@@ -233,8 +271,12 @@ impl App {
                 }
             }
             Wish::ShowPress(tag) => self.show_press(tag),
+            Wish::ShowOverview => self.view.is_overview = true,
             Wish::ShowSafeguard(place) => self.view.safeguard = Some(place),
-            Wish::ShowSheet(sheet) => self.view.sheet = sheet,
+            Wish::ShowSheet(sheet) => {
+                self.view.is_overview = false;
+                self.view.sheet = sheet;
+            }
             Wish::PrintRecord => self.print_record(),
             Wish::PrintRoundList(record, path) => {
                 self.messages.clear();
@@ -252,7 +294,6 @@ impl App {
             }
             Wish::ShowIn(unit) => self.view.unit = unit,
             Wish::SetDark(is_dark) => {
-                self.view.is_dark = is_dark;
                 theme::set_dark(context, is_dark);
             }
             Wish::SortByTag(is_by_tag) => self.view.is_by_tag = is_by_tag,
@@ -282,7 +323,7 @@ impl App {
         let after = self.tags();
         if self.view.press.as_ref().is_none_or(|tag| !after.contains(tag)) {
             let other = after.iter().find(|tag| !before.contains(tag)).or(after.first());
-            self.view.press = other.cloned();
+            self.turn_to(other.cloned());
         }
     }
 
@@ -291,6 +332,10 @@ impl App {
         let document = open.history.document();
         let Some(press) = self.view.press.as_ref().and_then(|tag| document.press(tag)) else { return };
         self.messages.clear();
+        if let Some(why) = NoResult::of(&self.drafts.refused()) {
+            self.messages.refuse(format!("The record is not printed. {} {}", why.sentence, why.what_to_do));
+            return;
+        }
         match super::sheets::records::print(document, press, &self.drafts.records, &self.given, self.view.unit) {
             Ok(path) => self.messages.tell(format!("Record printed to {}.", path.display())),
             Err(why) => self.messages.refuse(why),
@@ -311,6 +356,7 @@ impl App {
             Command::Find => self.view.focus_find = true,
             Command::ShowSheet(place) => {
                 if let Some(sheet) = Sheet::ALL.get(place) {
+                    self.view.is_overview = false;
                     self.view.sheet = *sheet;
                 }
             }
@@ -318,21 +364,35 @@ impl App {
     }
 
     fn views(&mut self, ui: &mut Ui, wishes: &mut Wishes) {
-        let Self { given, open, results, view, drafts, messages, .. } = self;
+        let Self { given, open, results, view, drafts, shelved, overview, messages, .. } = self;
         let history = open.as_ref().map(|open| &open.history);
-        Panel::bottom("status").show_separator_line(true).frame(panel_frame(6)).show(ui, |ui| {
+        let shown = history.filter(|_| !view.is_overview).and_then(|history| {
+            let press = history.document().press(view.press.as_deref()?)?;
+            Some((history, press, results.press(&press.tag)?))
+        });
+        let no_result = NoResult::of(&drafts.refused());
+        Panel::bottom("status").show_separator_line(true).frame(panel_frame(10, 6)).show(ui, |ui| {
             status::status_ui(ui, messages, history, given);
         });
-        Panel::left("presses").resizable(false).exact_size(252.0).frame(panel_frame(10)).show(ui, |ui| {
-            press_list::press_list_ui(ui, history, results, view, given.today, wishes);
+        Panel::left("presses").resizable(false).exact_size(218.0).frame(panel_frame(10, 10)).show(ui, |ui| {
+            let shown = view.press.clone().filter(|_| no_result.is_some());
+            let waiting = shelved.iter().filter(|(_, drafts)| !drafts.refused().is_empty());
+            let without_result: Vec<&str> = waiting.map(|(tag, _)| tag.as_str()).chain(shown.as_deref()).collect();
+            press_list::press_list_ui(ui, history, results, view, (given.today, &without_result), wishes);
         });
-        let shown = history.and_then(|history| {
-            let press = history.document().press(view.press.as_deref()?)?;
-            let result = results.press(&press.tag)?;
-            Some((history, press, result))
+        Panel::top("bar").show_separator_line(false).frame(panel_frame(12, 8)).show(ui, |ui| {
+            bar::bar_ui(ui, shown.map(|(_, press, _)| &**press), view, history, wishes);
         });
+        if let Some(history) = history.filter(|_| view.is_overview) {
+            CentralPanel::default().frame(panel_frame(14, 4)).show(ui, |ui| {
+                overview_ui(ui, history.document(), results, overview, (view.unit, given.today), wishes);
+            });
+            return;
+        }
         let Some((history, press, result)) = shown else {
-            CentralPanel::default().frame(panel_frame(20)).show(ui, |ui| header::nothing_shown_ui(ui, history, wishes));
+            CentralPanel::default()
+                .frame(panel_frame(20, 20))
+                .show(ui, |ui| header::nothing_shown_ui(ui, history, wishes));
             return;
         };
         let safeguard = view.safeguard.filter(|place| *place < press.safeguards.len()).or(result.gravest).unwrap_or(0);
@@ -343,24 +403,76 @@ impl App {
             safeguard,
             unit: view.unit,
             today: given.today,
+            is_without_result: no_result.is_some(),
         };
-        Panel::top("header").show_separator_line(true).frame(panel_frame(12)).show(ui, |ui| {
-            header::header_ui(ui, &cx, view, history, wishes);
+        Panel::top("header").show_separator_line(true).frame(panel_frame(12, 0)).show(ui, |ui| {
+            header::header_ui(ui, &cx, view.sheet, no_result.as_ref(), wishes);
         });
-        CentralPanel::default().frame(panel_frame(12)).show(ui, |ui| {
-            egui::ScrollArea::both().auto_shrink(false).id_salt((view.sheet.name(), &press.tag)).show(ui, |ui| {
-                view.sheet.ui(ui, &cx, drafts, wishes);
-            });
+        CentralPanel::default().frame(panel_frame(12, 10)).show(ui, |ui| {
+            view.sheet.ui(ui, &cx, drafts, wishes);
         });
+    }
+
+    fn dialog(&mut self, context: &Context, wishes: &mut Wishes) {
+        let Some(mut dialog) = self.dialog.take() else { return };
+        let document = self.open.as_ref().map(|open| open.history.document());
+        match dialogs::dialog_ui(context, &mut dialog, document, &mut self.jobs, wishes) {
+            dialogs::Outcome::Stays => self.dialog = Some(dialog),
+            dialogs::Outcome::Closes => {}
+            dialogs::Outcome::SaveThen(then) => {
+                if self.save() {
+                    self.go_on(then);
+                }
+            }
+            dialogs::Outcome::GoOn(then) => {
+                if let Err(why) = self.attempt(then) {
+                    dialog.refuse(why);
+                    self.dialog = Some(dialog);
+                }
+            }
+        }
+    }
+
+    /// The commands of this frame's keys. While a field has the cursor, what is half typed in it is committed first: the field
+    /// loses the cursor and tells so when it is drawn, and the command waits for the next frame.
+    fn commands(&mut self, context: &Context, wishes: &mut Wishes) {
+        let focused = context.memory(|memory| memory.focused());
+        for command in Command::pressed(context) {
+            match focused {
+                Some(id) => {
+                    context.memory_mut(|memory| memory.surrender_focus(id));
+                    self.jobs.later.push((command, id));
+                    context.request_repaint();
+                }
+                None => self.run_command(command, wishes),
+            }
+        }
+        if self.jobs.has_new_later() {
+            return;
+        }
+        for (command, id) in std::mem::take(&mut self.jobs.later) {
+            self.run_command(command, wishes);
+            if command.returns_to_field() {
+                context.memory_mut(|memory| memory.request_focus(id));
+            }
+        }
     }
 }
 
-fn panel_frame(margin: i8) -> Frame {
-    Frame::new().inner_margin(Margin::symmetric(margin.max(8), margin))
+fn panel_frame(sides: i8, ends: i8) -> Frame {
+    Frame::new().inner_margin(Margin::symmetric(sides, ends))
 }
 
 impl WindowApp for App {
-    fn logic(&mut self, context: &Context) {
+    fn close_requested(&mut self, _context: &Context) -> bool {
+        if self.jobs.is_closing || !self.is_dirty() {
+            return true;
+        }
+        self.dialog = Some(Dialog::Unsaved(Then::Close));
+        false
+    }
+
+    fn logic(&mut self, _context: &Context) {
         if let Some(folder) = self.jobs.picked_folder() {
             match &mut self.dialog {
                 Some(dialog) => dialog.take_path(&folder),
@@ -370,65 +482,28 @@ impl WindowApp for App {
         if self.jobs.dialog_failed() {
             self.messages.tell("No file dialog can be opened here. Type the path instead.".into());
         }
-        if context.input(|input| input.viewport().close_requested()) && !self.jobs.is_closing && self.is_dirty() {
-            context.send_viewport_cmd(ViewportCommand::CancelClose);
-            self.dialog = Some(Dialog::Unsaved(Then::Close));
-        }
+        self.given.today = (self.given.clock)().date();
         self.follow();
     }
 
     fn ui(&mut self, ui: &mut Ui) {
         let context = ui.ctx().clone();
         let mut wishes = Wishes::default();
-        for command in Command::pressed(&context) {
-            // What is half typed is committed first: the field loses the cursor and tells so when it is drawn.
-            if let Some(id) = context.memory(|memory| memory.focused())
-                && command != Command::Undo
-                && command != Command::Redo
-            {
-                context.memory_mut(|memory| memory.surrender_focus(id));
-                self.jobs.later.push(command);
-                context.request_repaint();
-            } else {
-                self.run_command(command, &mut wishes);
-            }
-        }
-        let is_later = context.memory(|memory| memory.focused()).is_none() && !self.jobs.has_new_later();
-        if is_later {
-            for command in std::mem::take(&mut self.jobs.later) {
-                self.run_command(command, &mut wishes);
-            }
+        if self.dialog.is_none() {
+            self.commands(&context, &mut wishes);
         }
         self.views(ui, &mut wishes);
-        let mut dialog = self.dialog.take();
-        if let Some(open_dialog) = &mut dialog {
-            match dialogs::dialog_ui(&context, open_dialog, &mut self.jobs, &mut wishes) {
-                dialogs::Outcome::Stays => {}
-                dialogs::Outcome::Closes => dialog = None,
-                dialogs::Outcome::SaveThen(then) => {
-                    dialog = None;
-                    if self.save() {
-                        self.go_on(then);
-                    }
-                }
-                dialogs::Outcome::GoOn(then) => {
-                    dialog = None;
-                    self.go_on(then);
-                }
-            }
-        }
-        if self.dialog.is_none() {
-            self.dialog = dialog;
-        }
+        self.dialog(&context, &mut wishes);
         let is_asking = !wishes.0.is_empty();
         for wish in wishes.0 {
             self.carry_out(wish, &context);
         }
         if is_asking {
             // What was changed is shown in the next frame, which must come without waiting for the mouse.
+            self.follow();
             context.request_repaint();
         }
-        if self.jobs.is_closing {
+        if self.jobs.asks_to_close() {
             context.send_viewport_cmd(ViewportCommand::Close);
         }
     }

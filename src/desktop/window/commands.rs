@@ -97,12 +97,31 @@ impl Command {
         }
     }
 
+    /// Other keys that do the same, for hands that are used to them.
+    pub const fn other_shortcut(self) -> Option<KeyboardShortcut> {
+        match self {
+            Self::Redo => Some(KeyboardShortcut::new(Modifiers::COMMAND, Key::Y)),
+            _ => None,
+        }
+    }
+
+    /// Both kinds of keys.
+    fn shortcuts(self) -> impl Iterator<Item = KeyboardShortcut> {
+        std::iter::once(self.shortcut()).chain(self.other_shortcut())
+    }
+
+    /// Whether the cursor goes back to the field that it stood in.
+    pub const fn returns_to_field(self) -> bool {
+        matches!(self, Self::Save | Self::Undo | Self::Redo | Self::PrintRecord)
+    }
+
     /// The commands whose keys were pressed in this frame. Longer shortcuts are looked at first, since they hold the shorter.
     pub fn pressed(context: &egui::Context) -> Vec<Self> {
         let mut commands: Vec<Self> = Self::ALL.to_vec();
         commands.sort_by_key(|command| std::cmp::Reverse(command.shortcut().modifiers.shift));
         context.input_mut(|input| {
-            commands.into_iter().filter(|command| input.consume_shortcut(&command.shortcut())).collect()
+            let mut is_pressed = |command: &Self| command.shortcuts().any(|keys| input.consume_shortcut(&keys));
+            commands.into_iter().filter(|command| is_pressed(command)).collect()
         })
     }
 }
@@ -113,10 +132,11 @@ mod tests {
 
     #[test]
     fn no_two_commands_share_their_keys_and_none_is_a_plain_letter() {
-        for (index, one) in Command::ALL.iter().enumerate() {
-            assert!(one.shortcut().modifiers.command, "{one:?}");
-            for other in &Command::ALL[index + 1..] {
-                assert_ne!(one.shortcut(), other.shortcut(), "{one:?} {other:?}");
+        let all: Vec<_> = Command::ALL.iter().flat_map(|one| one.shortcuts().map(move |keys| (one, keys))).collect();
+        for (index, (one, keys)) in all.iter().enumerate() {
+            assert!(keys.modifiers.command, "{one:?}");
+            for (other, other_keys) in &all[index + 1..] {
+                assert_ne!(keys, other_keys, "{one:?} {other:?}");
             }
         }
     }
@@ -125,7 +145,7 @@ mod tests {
     fn text_fields_keep_their_own_keys() {
         // Cut, copy, paste and select all belong to the field that has the cursor.
         for key in [Key::X, Key::C, Key::V, Key::A] {
-            assert!(Command::ALL.iter().all(|command| command.shortcut().logical_key != key));
+            assert!(Command::ALL.iter().flat_map(|one| one.shortcuts()).all(|keys| keys.logical_key != key));
         }
     }
 }

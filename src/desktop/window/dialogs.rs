@@ -14,12 +14,13 @@ use figure::Role;
 
 use super::app::empty_press;
 use super::jobs::Jobs;
+use super::sheets::label_ui;
 use super::theme;
 use super::widgets::{
-    Commit, Drafts, FieldKind, Named, caption, choice_ui, field_ui, heading, refusal_line, text_field,
+    Commit, Drafts, FieldKind, Named, bare_choice_ui, caption, field_ui, heading, refusal_line, segments_ui, text_field,
 };
 use super::wishes::{Wish, Wishes};
-use crate::document::{Act, Change};
+use crate::document::{Act, Change, Document};
 
 /// What is asked.
 pub enum Dialog {
@@ -40,12 +41,20 @@ pub enum Dialog {
 pub struct PathDraft {
     text: String,
     is_fresh: bool,
+    /// Why the path could not be taken.
+    refusal: Option<String>,
 }
 
 /// The settings that are being edited.
 pub struct PlantDraft {
     settings: PlantSettings,
     drafts: Drafts,
+}
+
+impl PathDraft {
+    fn new(text: String) -> Self {
+        Self { text, is_fresh: true, refusal: None }
+    }
 }
 
 /// What is done once the unsaved changes are dealt with.
@@ -84,12 +93,12 @@ impl Dialog {
     /// Asks which plant to open, beginning from the present one.
     pub fn open(folder: Option<PathBuf>) -> Self {
         let text = folder.map_or(String::new(), |folder| folder.display().to_string());
-        Self::Open(PathDraft { text, is_fresh: true })
+        Self::Open(PathDraft::new(text))
     }
 
     /// Asks for a new plant.
     pub fn new_plant() -> Self {
-        Self::NewPlant(PathDraft { text: String::new(), is_fresh: true }, String::new())
+        Self::NewPlant(PathDraft::new(String::new()), String::new())
     }
 
     /// Asks for the tag of a new press.
@@ -99,27 +108,45 @@ impl Dialog {
 
     /// Asks what holds for the plant.
     pub fn plant(settings: &PlantSettings) -> Self {
-        Self::Plant(Box::new(PlantDraft { settings: settings.clone(), drafts: Drafts::default() }))
+        let mut drafts = Drafts::default();
+        drafts.focus(plant_id("name"));
+        Self::Plant(Box::new(PlantDraft { settings: settings.clone(), drafts }))
+    }
+
+    /// Says why the path could not be taken, and gives the cursor back to it.
+    pub fn refuse(&mut self, why: String) {
+        if let Self::Open(path) | Self::NewPlant(path, _) = self {
+            path.refusal = Some(why);
+            path.is_fresh = true;
+        }
     }
 
     /// Takes a path from the system's folder dialog.
     pub fn take_path(&mut self, folder: &Path) {
         if let Self::Open(path) | Self::NewPlant(path, _) = self {
             path.text = folder.display().to_string();
+            path.refusal = None;
         }
     }
 }
 
 /// Shows a dialog.
-pub fn dialog_ui(context: &Context, dialog: &mut Dialog, jobs: &mut Jobs, wishes: &mut Wishes) -> Outcome {
+pub fn dialog_ui(
+    context: &Context,
+    dialog: &mut Dialog,
+    document: Option<&Document>,
+    jobs: &mut Jobs,
+    wishes: &mut Wishes,
+) -> Outcome {
     let mut outcome = Outcome::Stays;
-    let response = Modal::new(Id::unique("dialog")).show(context, |ui| {
-        ui.set_width(520.0);
+    let frame = egui::Frame::popup(&context.global_style()).inner_margin(20.0);
+    let response = Modal::new(Id::unique("dialog")).frame(frame).show(context, |ui| {
+        ui.set_width(560.0);
         ui.spacing_mut().item_spacing.y = 8.0;
         outcome = match dialog {
             Dialog::Open(path) => open_ui(ui, path, jobs),
             Dialog::NewPlant(path, name) => new_plant_ui(ui, path, name, jobs),
-            Dialog::NewPress(tag, refusal, is_fresh) => new_press_ui(ui, tag, refusal, is_fresh, wishes),
+            Dialog::NewPress(tag, refusal, is_fresh) => new_press_ui(ui, document, tag, refusal, is_fresh, wishes),
             Dialog::Unsaved(then) => unsaved_ui(ui, then),
             Dialog::Plant(draft) => plant_ui(ui, draft, wishes),
         };
@@ -147,13 +174,28 @@ fn path_ui(ui: &mut Ui, path: &mut PathDraft, jobs: &mut Jobs) -> bool {
     if std::mem::take(&mut path.is_fresh) {
         response.request_focus();
     }
+    if response.changed() {
+        path.refusal = None;
+    }
     response.lost_focus() && ui.input(|input| input.key_pressed(Key::Enter))
+}
+
+/// What a path must be, or why this one could not be taken, in the same place.
+fn path_words_ui(ui: &mut Ui, path: &PathDraft, what: &str) {
+    match &path.refusal {
+        Some(why) => {
+            ui.add(egui::Label::new(RichText::new(why).color(theme::colour(ui.ctx(), Role::Short))).wrap());
+        }
+        None => {
+            caption(ui, what);
+        }
+    }
 }
 
 fn open_ui(ui: &mut Ui, path: &mut PathDraft, jobs: &mut Jobs) -> Outcome {
     title(ui, "Open a plant");
     let is_entered = path_ui(ui, path, jobs);
-    caption(ui, "The folder that holds plant.ron. Type its path, or choose it.");
+    path_words_ui(ui, path, "The folder that holds plant.ron. Type its path, or choose it.");
     let mut outcome = Outcome::Stays;
     ui.horizontal(|ui| {
         let is_ready = !path.text.trim().is_empty();
@@ -170,7 +212,7 @@ fn open_ui(ui: &mut Ui, path: &mut PathDraft, jobs: &mut Jobs) -> Outcome {
 fn new_plant_ui(ui: &mut Ui, path: &mut PathDraft, name: &mut String, jobs: &mut Jobs) -> Outcome {
     title(ui, "New plant");
     path_ui(ui, path, jobs);
-    caption(ui, "An empty folder, or one that does not exist yet.");
+    path_words_ui(ui, path, "An empty folder, or one that does not exist yet.");
     let label = ui.label("Name of the plant");
     let named = ui.add(TextEdit::singleline(name).id_salt("plant name").desired_width(400.0)).labelled_by(label.id);
     let is_entered = named.lost_focus() && ui.input(|input| input.key_pressed(Key::Enter));
@@ -201,6 +243,7 @@ fn new_plant_ui(ui: &mut Ui, path: &mut PathDraft, name: &mut String, jobs: &mut
 
 fn new_press_ui(
     ui: &mut Ui,
+    document: Option<&Document>,
     tag: &mut String,
     refusal: &mut Option<Refusal>,
     is_fresh: &mut bool,
@@ -218,7 +261,7 @@ fn new_press_ui(
     let mut outcome = Outcome::Stays;
     ui.horizontal(|ui| {
         if ui.button("Add it").clicked() || is_entered {
-            match check_tag(tag.trim()) {
+            match document.map_or_else(|| check_tag(tag.trim()), |document| document.check_tag(tag.trim())) {
                 Ok(()) => {
                     let press = Box::new(empty_press(tag.trim().to_owned()));
                     let label = format!("add press {}", press.tag);
@@ -301,45 +344,83 @@ impl Named for Wished {
     }
 }
 
+/// A row of a dialog: its name in a column of its own.
+fn row_ui(ui: &mut Ui, name: &str, add: impl FnOnce(&mut Ui)) {
+    ui.horizontal(|ui| {
+        label_ui(ui, 140.0, name);
+        add(ui);
+    });
+}
+
+fn plant_id(field: &str) -> Id {
+    Id::unique(("plant settings", field))
+}
+
 fn plant_ui(ui: &mut Ui, draft: &mut PlantDraft, wishes: &mut Wishes) -> Outcome {
     title(ui, "Plant settings");
     let PlantDraft { settings, drafts } = draft;
-    let id = |name: &str| Id::unique(("plant settings", name));
-    if let Some(Commit::Set(name, _)) =
-        text_field(ui, id("name"), FieldKind::words("Name").wide(320.0), &settings.name, drafts)
-    {
-        settings.name = name;
+    let id = plant_id;
+    let mut refused = None;
+    row_ui(ui, "Name", |ui| {
+        let kind = FieldKind::words("Name").bare().wide(320.0);
+        if let Some(Commit::Set(name, _)) = text_field(ui, id("name"), kind, &settings.name, drafts) {
+            settings.name = name;
+        }
+    });
+    row_ui(ui, "Rule set", |ui| {
+        if let Some(rules) =
+            bare_choice_ui::<RuleSetId>(ui, id("rules"), "Rule set of the plant", 320.0, settings.rules)
+        {
+            settings.rules = rules;
+        }
+    });
+    if settings.rules.edition() != settings.rules.title() {
+        row_ui(ui, "", |ui| {
+            caption(ui, settings.rules.edition());
+        });
     }
-    if let Some(rules) = choice_ui::<RuleSetId>(ui, id("rules"), "Rule set", 260.0, settings.rules) {
-        settings.rules = rules;
-    }
-    caption(ui, settings.rules.edition());
-    if let Some(wish) = choice_ui(ui, id("wish"), "Value taken forward, at least", 240.0, Wished(settings.wish)) {
-        settings.wish = wish.0;
-    }
-    caption(ui, "A wish can only make a result more cautious than the rule set.");
+    row_ui(ui, "Value taken forward", |ui| {
+        let wish = bare_choice_ui(ui, id("wish"), "Value taken forward", 320.0, Wished(settings.wish));
+        if let Some(wish) = wish {
+            settings.wish = wish.0;
+        }
+    });
+    row_ui(ui, "", |ui| {
+        caption(ui, "A wish can only make a result more cautious than the rule set.");
+    });
     heading(ui, "Intervals");
-    let kind = FieldKind::figure("Stop test every", "months");
-    if let Some(months) =
-        count_field(ui, id("months"), kind, &limits::INTERVAL_MONTHS, settings.test_interval_months, drafts)
-    {
-        settings.test_interval_months = months;
-    }
-    let interval = [
-        (None, "none"),
-        (Some(Interval::Weeks(1)), "every week"),
-        (Some(Interval::Months(1)), "every month"),
-        (Some(Interval::Months(3)), "every 3 months"),
-    ];
-    if let Some(interval) = super::widgets::segments_ui(ui, "Reading", settings.reading_interval, &interval) {
-        settings.reading_interval = interval;
-    }
-    let kind = FieldKind::figure("Warning from", "% of the spare on");
-    if let Some(share) =
-        count_field(ui, id("share"), kind, &limits::WARNING_SHARE, settings.warning_share_percent, drafts)
-    {
-        settings.warning_share_percent = share;
-    }
+    row_ui(ui, "Stop test every", |ui| {
+        let kind = FieldKind::figure("Stop test every", "months").bare();
+        let months = id("months");
+        if let Some(count) =
+            count_field(ui, months, kind, &limits::INTERVAL_MONTHS, settings.test_interval_months, drafts)
+        {
+            settings.test_interval_months = count;
+        }
+        refused = drafts.refusal(months).cloned();
+    });
+    row_ui(ui, "Reading", |ui| {
+        let interval = [
+            (None, "none"),
+            (Some(Interval::Weeks(1)), "every week"),
+            (Some(Interval::Months(1)), "every month"),
+            (Some(Interval::Months(3)), "every 3 months"),
+        ];
+        if let Some(interval) = segments_ui(ui, "", settings.reading_interval, &interval) {
+            settings.reading_interval = interval;
+        }
+    });
+    row_ui(ui, "Warning from", |ui| {
+        let kind = FieldKind::figure("Warning from", "% of the spare on").bare();
+        let share = id("share");
+        if let Some(count) =
+            count_field(ui, share, kind, &limits::WARNING_SHARE, settings.warning_share_percent, drafts)
+        {
+            settings.warning_share_percent = count;
+        }
+        refused = refused.take().or_else(|| drafts.refusal(share).cloned());
+    });
+    refusal_line(ui, refused.as_ref());
     ui.collapsing("What laws and guides ask for", |ui| {
         for preset in PRESETS {
             ui.label(format!("{}: {}", preset.name, preset.interval.words()));
@@ -347,12 +428,7 @@ fn plant_ui(ui: &mut Ui, draft: &mut PlantDraft, wishes: &mut Wishes) -> Outcome
         }
     });
     let mut outcome = Outcome::Stays;
-    if drafts.has_refusals() {
-        ui.label(
-            RichText::new("A field cannot be taken; correct it first.").color(theme::colour(ui.ctx(), Role::Short)),
-        );
-    }
-    let is_sound = !drafts.has_refusals();
+    let is_sound = drafts.refused().is_empty();
     ui.horizontal(|ui| {
         if ui.add_enabled(is_sound, egui::Button::new("Take over")).clicked() {
             let settings = settings.clone();

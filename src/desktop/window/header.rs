@@ -1,112 +1,109 @@
-//! What stays in view on every sheet: which press, which rule set, the reach strip and its sentence.
+//! What stays in view on every sheet of a press: the reach strip, its sentence and the tabs.
 
-use calc::rules::RuleSetId;
 use calc::sentence;
-use calc::units::LengthUnit;
-use egui::{Align, Layout, RichText, Ui};
-use figure::{Role, StripInput, reach_strip};
+use egui::{RichText, Ui};
+use figure::{AnswerMark, Role, StripInput, reach_strip};
 
-use super::app::{ViewState, answer_role};
+use super::app::answer_role;
 use super::commands::Command;
 use super::context::SheetContext;
-use super::drawing::{drawing_ui, mark_ui, width_mm};
+use super::drawing::{POINTS_PER_MM, drawing_ui, mark_ui, width_mm};
 use super::sheets::Sheet;
 use super::theme;
-use super::widgets::{choice_ui, empty_state, segments_ui};
+use super::widgets::{empty_state, shortcut_button};
 use super::wishes::{Wish, Wishes};
 use crate::document::History;
 
-/// Shows the head of the window.
-pub fn header_ui(ui: &mut Ui, cx: &SheetContext, view: &ViewState, history: &History, wishes: &mut Wishes) {
-    title_row_ui(ui, cx, view, history, wishes);
-    ui.add_space(2.0);
+/// Height of the strip, kept where there is none, so that the sheet below does not jump when the first stop is typed.
+const STRIP_MM: f32 = 22.5;
+
+/// Shows the head of a press. While an entry cannot be taken, `no_result` says so in place of the answer.
+pub fn header_ui(ui: &mut Ui, cx: &SheetContext, sheet: Sheet, no_result: Option<&NoResult>, wishes: &mut Wishes) {
     match cx.assessment() {
         Some(assessment) => {
             safeguards_row_ui(ui, cx, wishes);
-            match StripInput::of(assessment, cx.unit) {
-                Some(input) => {
+            let strip = StripInput::of(assessment, cx.unit).filter(|_| no_result.is_none());
+            match (strip, no_result) {
+                (Some(input), _) => {
                     drawing_ui(ui, &reach_strip(&input, width_mm(ui), &theme::drawing_fonts()));
                 }
-                // The strip's place is kept, so that the sheet below does not jump when the first stop is typed.
-                None => {
-                    ui.allocate_ui(egui::vec2(ui.available_width(), 27.0 * super::drawing::POINTS_PER_MM), |ui| {
-                        ui.set_min_height(27.0 * super::drawing::POINTS_PER_MM);
-                        ui.centered_and_justified(|ui| {
-                            ui.label(
-                                RichText::new("No distance to draw yet.").color(theme::colour(ui.ctx(), Role::Faint)),
-                            );
-                        });
-                    });
-                }
+                (None, Some(_)) => no_strip_ui(ui, "No distance is drawn while an entry cannot be taken."),
+                (None, None) => no_strip_ui(ui, "No distance to draw yet."),
             }
-            sentence_ui(ui, cx);
+            match no_result {
+                Some(no_result) => no_result_ui(ui, no_result),
+                None => sentence_ui(ui, cx),
+            }
         }
-        None => empty_state(
-            ui,
-            "This press has no safeguard yet",
-            "Add one on the sheet Safeguards: Ctrl+3, then Add safeguard.",
-        ),
+        None => {
+            let keys = ui.ctx().format_shortcut(&Command::ShowSheet(2).shortcut());
+            let what = format!("Add one on the sheet Safeguards ({keys}).");
+            empty_state(ui, "This press has no safeguard yet", &what);
+            if let Some(no_result) = no_result {
+                no_result_ui(ui, no_result);
+            }
+        }
     }
     ui.add_space(2.0);
+    tabs_ui(ui, sheet, wishes);
+    ui.add_space(4.0);
+}
+
+/// Why no answer is given.
+pub struct NoResult {
+    /// "An entry on the sheet Press cannot be taken."
+    pub sentence: String,
+    /// The first refusal, and what to do.
+    pub what_to_do: String,
+}
+
+impl NoResult {
+    /// `None` when every entry could be taken.
+    pub fn of(refused: &[(Sheet, Vec<String>)]) -> Option<Self> {
+        let first = refused.first()?.1.first()?;
+        let places: Vec<String> = refused
+            .iter()
+            .map(|(sheet, words)| match words.len() {
+                1 => format!("an entry on the sheet {} cannot be taken", sheet.name()),
+                count => format!("{count} entries on the sheet {} cannot be taken", sheet.name()),
+            })
+            .collect();
+        Some(Self {
+            sentence: format!("{}.", calc::assess::capitalised(&places.join(", and "))),
+            what_to_do: format!("{first} Escape in the field brings back what stood there."),
+        })
+    }
+}
+
+fn no_strip_ui(ui: &mut Ui, words: &str) {
+    let size = egui::vec2(ui.available_width(), STRIP_MM * POINTS_PER_MM);
+    ui.allocate_ui(size, |ui| {
+        ui.set_min_height(size.y);
+        ui.centered_and_justified(|ui| {
+            ui.label(RichText::new(words).color(theme::colour(ui.ctx(), Role::Faint)));
+        });
+    });
+}
+
+fn tabs_ui(ui: &mut Ui, shown: Sheet, wishes: &mut Wishes) {
     ui.horizontal(|ui| {
+        ui.spacing_mut().item_spacing.x = 4.0;
         for (index, sheet) in Sheet::ALL.iter().enumerate() {
             let keys = ui.ctx().format_shortcut(&Command::ShowSheet(index).shortcut());
             let text = RichText::new(sheet.name()).font(theme::strong(14.5));
-            if ui.selectable_label(view.sheet == *sheet, text).on_hover_text(keys).clicked() {
+            if ui.selectable_label(shown == *sheet, text).on_hover_text(keys).clicked() {
                 wishes.push(Wish::ShowSheet(*sheet));
             }
         }
     });
 }
 
-fn title_row_ui(ui: &mut Ui, cx: &SheetContext, view: &ViewState, history: &History, wishes: &mut Wishes) {
-    ui.horizontal(|ui| {
-        ui.label(RichText::new(&cx.press.tag).font(theme::strong(20.0)));
-        let place = [&cx.press.description, &cx.press.location].into_iter().filter(|text| !text.is_empty());
-        let words = place.cloned().collect::<Vec<_>>().join(", ");
-        ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
-            if let Some(is_dark) = segments_ui(ui, "", view.is_dark, &[(true, "dark"), (false, "light")]) {
-                wishes.push(Wish::SetDark(is_dark));
-            }
-            ui.separator();
-            if let Some(unit) =
-                segments_ui(ui, "", cx.unit, &[(LengthUnit::Inch, "in"), (LengthUnit::Millimetre, "mm")])
-            {
-                wishes.push(Wish::ShowIn(unit));
-            }
-            ui.separator();
-            if let Some(rules) =
-                choice_ui::<RuleSetId>(ui, egui::Id::unique("rule set"), "", 190.0, cx.document.settings.rules)
-            {
-                wishes.edit_plant("change the rule set", move |plant| plant.rules = rules);
-            }
-            ui.separator();
-            let button = |ui: &mut Ui, command: Command, hint: Option<&str>| {
-                let keys = ui.ctx().format_shortcut(&command.shortcut());
-                let response = ui.add_enabled(hint.is_some(), egui::Button::new(command.name()));
-                response.on_hover_text(format!("{} ({keys})", hint.unwrap_or_default())).clicked()
-            };
-            if button(ui, Command::Redo, history.redo_label()) {
-                wishes.push(Wish::Redo);
-            }
-            if button(ui, Command::Undo, history.undo_label()) {
-                wishes.push(Wish::Undo);
-            }
-            if button(ui, Command::Save, history.is_dirty().then_some("write what has changed")) {
-                wishes.push(Wish::Save);
-            }
-            ui.with_layout(Layout::left_to_right(Align::Center), |ui| {
-                ui.add(egui::Label::new(RichText::new(words).size(15.0)).truncate());
-            });
-        });
-    });
-}
-
 fn safeguards_row_ui(ui: &mut Ui, cx: &SheetContext, wishes: &mut Wishes) {
-    ui.horizontal(|ui| {
+    ui.horizontal_wrapped(|ui| {
         ui.spacing_mut().item_spacing.x = 3.0;
         for (index, (safeguard, assessment)) in cx.press.safeguards.iter().zip(&cx.result.assessments).enumerate() {
-            mark_ui(ui, assessment.answer, 10.0);
+            let mark = if cx.is_without_result { AnswerMark::Unproven } else { assessment.answer.into() };
+            mark_ui(ui, mark, 10.0);
             let name = calc::assess::capitalised(&safeguard.name);
             if ui.selectable_label(index == cx.safeguard, name).clicked() {
                 wishes.push(Wish::ShowSafeguard(index));
@@ -116,44 +113,68 @@ fn safeguards_row_ui(ui: &mut Ui, cx: &SheetContext, wishes: &mut Wishes) {
     });
 }
 
-fn sentence_ui(ui: &mut Ui, cx: &SheetContext) {
-    let (Some(assessment), Some(safeguard)) = (cx.assessment(), cx.press.safeguards.get(cx.safeguard)) else { return };
-    let height = ui.text_style_height(&egui::TextStyle::Body) * 2.0 + 10.0;
+/// Room for a sentence and its remedies, kept whether both are there or not.
+fn two_lines_ui(ui: &mut Ui, add: impl FnOnce(&mut Ui)) {
+    let height = ui.text_style_height(&egui::TextStyle::Body) * 2.0 + 16.0;
     ui.allocate_ui(egui::vec2(ui.available_width(), height), |ui| {
         ui.set_min_height(height);
-        ui.vertical(|ui| {
-            ui.horizontal_wrapped(|ui| {
-                ui.spacing_mut().item_spacing.x = 6.0;
-                mark_ui(ui, assessment.answer, 13.0);
-                let colour = theme::colour(ui.ctx(), answer_role(assessment.answer));
-                ui.label(RichText::new(assessment.answer.word()).font(theme::strong(15.0)).color(colour));
-                let words = sentence::headline(safeguard, assessment, cx.unit);
-                ui.label(RichText::new(words).font(theme::strong(15.0)));
-            });
-            if let Some(remedies) = sentence::remedies(assessment, cx.unit) {
-                ui.add(egui::Label::new(remedies).wrap());
-            }
-        });
+        ui.vertical(add);
+    });
+}
+
+fn answer_ui(ui: &mut Ui, mark: AnswerMark, role: Role, word: &str, sentence: &str) {
+    ui.horizontal_wrapped(|ui| {
+        ui.spacing_mut().item_spacing.x = 6.0;
+        mark_ui(ui, mark, 13.0);
+        let colour = theme::colour(ui.ctx(), role);
+        ui.label(RichText::new(word).font(theme::strong(15.0)).color(colour));
+        ui.label(RichText::new(sentence).font(theme::strong(15.0)));
+    });
+}
+
+fn no_result_ui(ui: &mut Ui, no_result: &NoResult) {
+    two_lines_ui(ui, |ui| {
+        answer_ui(ui, AnswerMark::Unproven, Role::Unproven, "No result", &no_result.sentence);
+        ui.add(egui::Label::new(&no_result.what_to_do).wrap());
+    });
+}
+
+fn sentence_ui(ui: &mut Ui, cx: &SheetContext) {
+    let (Some(assessment), Some(safeguard)) = (cx.assessment(), cx.press.safeguards.get(cx.safeguard)) else { return };
+    two_lines_ui(ui, |ui| {
+        let words = sentence::headline(safeguard, assessment, cx.unit);
+        let role = answer_role(assessment.answer);
+        answer_ui(ui, assessment.answer.into(), role, assessment.answer.word(), &words);
+        if let Some(remedies) = sentence::remedies(assessment, cx.unit) {
+            ui.add(egui::Label::new(remedies).wrap());
+        }
     });
 }
 
 /// Shows what to do when there is no press to show.
 pub fn nothing_shown_ui(ui: &mut Ui, history: Option<&History>, wishes: &mut Wishes) {
     let (title, what) = match history {
-        None => ("No plant is open", "Open a plant folder, or make a new one."),
+        None => ("No plant is open", "Open the folder of a plant, or make a new one."),
         Some(history) if history.document().presses.is_empty() => {
-            ("This plant has no press yet", "Add the first one with New press.")
+            ("This plant has no press yet", "Add the first one; its tag is all that it needs to begin with.")
         }
         Some(_) => ("No press is chosen", "Choose one from the list."),
     };
+    ui.add_space((ui.available_height() * 0.25).max(0.0));
     empty_state(ui, title, what);
-    ui.vertical_centered(|ui| {
-        if history.is_some() {
-            if ui.button(Command::NewPress.name()).clicked() {
-                wishes.push(Wish::NewPress);
+    let commands: &[Command] = match history {
+        None => &[Command::OpenPlant, Command::NewPlant],
+        Some(_) => &[Command::NewPress],
+    };
+    for command in commands {
+        ui.vertical_centered(|ui| {
+            if shortcut_button(ui, command.name(), &command.shortcut(), true).clicked() {
+                wishes.push(match command {
+                    Command::OpenPlant => Wish::OpenPlant,
+                    Command::NewPlant => Wish::NewPlant,
+                    _ => Wish::NewPress,
+                });
             }
-        } else if ui.button(Command::OpenPlant.name()).clicked() {
-            wishes.push(Wish::OpenPlant);
-        }
-    });
+        });
+    }
 }

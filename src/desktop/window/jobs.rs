@@ -14,11 +14,12 @@ const TOO_QUICK: Duration = Duration::from_millis(200);
 pub struct Jobs {
     picking: Option<(Receiver<Option<PathBuf>>, Instant)>,
     has_failed: bool,
-    /// Commands that wait until the field with the cursor has committed.
-    pub later: Vec<Command>,
+    /// Commands that wait until the field with the cursor has committed, each with that field.
+    pub later: Vec<(Command, egui::Id)>,
     waited: bool,
     /// Whether the window is closing for good.
     pub is_closing: bool,
+    has_asked_to_close: bool,
 }
 
 impl Jobs {
@@ -49,7 +50,7 @@ impl Jobs {
             Err(TryRecvError::Disconnected) => None,
             Ok(answer) => answer,
         };
-        if answer.is_none() && (crate::host::dialog_failed() || began.elapsed() < TOO_QUICK) {
+        if answer.is_none() && (crate::host::journal::take_error("rfd").is_some() || began.elapsed() < TOO_QUICK) {
             self.has_failed = true;
         }
         self.picking = None;
@@ -59,6 +60,11 @@ impl Jobs {
     /// Whether a dialog could not be opened since the last call.
     pub fn dialog_failed(&mut self) -> bool {
         std::mem::take(&mut self.has_failed)
+    }
+
+    /// Whether the host is to be asked to close the window; once is enough.
+    pub fn asks_to_close(&mut self) -> bool {
+        self.is_closing && !std::mem::replace(&mut self.has_asked_to_close, true)
     }
 
     /// Whether commands were put off in this very frame, in which the field has not been drawn yet.

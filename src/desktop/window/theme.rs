@@ -2,9 +2,11 @@
 
 use std::sync::Arc;
 
-use egui::epaint::text::{FontInsert, FontPriority, InsertFontFamily};
 use egui::style::{Selection, WidgetVisuals, Widgets};
-use egui::{Color32, Context, CornerRadius, FontData, FontFamily, FontId, Margin, Stroke, TextStyle, Theme, Visuals};
+use egui::{
+    Color32, Context, CornerRadius, FontData, FontDefinitions, FontFamily, FontId, Margin, Stroke, TextStyle, Theme,
+    Visuals,
+};
 use figure::{Palette, Role};
 
 /// The name of the heavier weight among egui's font families.
@@ -22,12 +24,7 @@ pub fn strong(size: f32) -> FontId {
 
 /// Puts fonts and style of both themes into a context, once, before the first frame.
 pub fn install(context: &Context) {
-    let insert = |name: &str, bytes: &'static [u8], family: FontFamily| {
-        let family = InsertFontFamily { family, priority: FontPriority::Highest };
-        context.add_font(FontInsert::new(name, FontData::from_static(bytes), vec![family]));
-    };
-    insert("plex-regular", figure::REGULAR, FontFamily::Proportional);
-    insert("plex-semibold", figure::SEMI_BOLD, strong_family());
+    context.set_fonts(fonts());
     for (theme, palette) in [(Theme::Light, Palette::Light), (Theme::Dark, Palette::Dark)] {
         context.style_mut_of(theme, |style| {
             style.text_styles = [
@@ -48,6 +45,21 @@ pub fn install(context: &Context) {
         });
     }
     set_dark(context, false);
+}
+
+/// Both weights, each with egui's own fonts behind it for the characters that it lacks.
+fn fonts() -> FontDefinitions {
+    let mut fonts = FontDefinitions::default();
+    let fallbacks = fonts.families.get(&FontFamily::Proportional).cloned().unwrap_or_default();
+    for (name, bytes, family) in [
+        ("plex-regular", figure::REGULAR, FontFamily::Proportional),
+        ("plex-semibold", figure::SEMI_BOLD, strong_family()),
+    ] {
+        fonts.font_data.insert(name.to_owned(), Arc::new(FontData::from_static(bytes)));
+        let names = std::iter::once(name.to_owned()).chain(fallbacks.iter().cloned()).collect();
+        fonts.families.insert(family, names);
+    }
+    fonts
 }
 
 /// Shows the dark theme or the light one.
@@ -98,7 +110,7 @@ fn visuals(palette: Palette, is_dark: bool) -> Visuals {
             active: widget(lift(26), accent, ink),
             open: widget(lift(18), accent, ink),
         },
-        selection: Selection { bg_fill: accent.gamma_multiply(0.28), stroke: Stroke::new(1.5, accent) },
+        selection: Selection { bg_fill: accent.gamma_multiply(0.18), stroke: Stroke::new(1.5, accent) },
         hyperlink_color: accent,
         faint_bg_color: lift(5),
         extreme_bg_color: field,

@@ -27,6 +27,8 @@ pub enum Wish {
     OpenFolder(PathBuf),
     /// Add a press.
     NewPress,
+    /// Show every press in one table.
+    ShowOverview,
     /// Show this press.
     ShowPress(String),
     /// Show this safeguard of the shown press, by its place.

@@ -198,7 +198,7 @@ fn the_readings_tell_the_stories_they_were_made_for() {
     let (settings, presses) = sample_plant();
     let stories = [
         ("E-101", "Steady: "),
-        ("E-103", "The latest reading is at or over the distance used up"),
+        ("E-103", "The latest reading is at or over \"distance used up\""),
         ("E-109", "Drifting: +0."),
         ("E-110", "Stepped from "),
         ("E-111", "Steady: "),

@@ -12,6 +12,8 @@ use calc::units::{Angle, Length, Rate, Time};
 use calc::value_taken::summary_ms;
 
 use super::super::args::{DistanceArgs, ShapeArg};
+use super::super::figures::figures;
+use super::unsaid;
 
 /// What is asked.
 pub struct Asked {
@@ -33,7 +35,9 @@ impl Asked {
     }
 }
 
-struct Reader {
+/// Gathers every refusal of a call.
+#[derive(Default)]
+pub(super) struct Reader {
     refusals: Vec<String>,
 }
 
@@ -42,7 +46,7 @@ impl Reader {
         self.refusals.push(refusal.to_string());
     }
 
-    fn number(&mut self, text: Option<&String>, limit: Limit, name: &'static str) -> Option<i64> {
+    pub(super) fn number(&mut self, text: Option<&String>, limit: Limit, name: &'static str) -> Option<i64> {
         let text = text?;
         limit.named(name).take_text(text).map_err(|refusal| self.refuse(&refusal)).ok()
     }
@@ -64,28 +68,16 @@ impl Reader {
         self.length(text, limit, name).unwrap_or(Length::ZERO)
     }
 
-    /// Figures in a row. A comma parts them, unless a semicolon or a space does; then it is the decimal mark.
-    fn list(&mut self, text: &str, limit: Limit) -> Vec<i64> {
-        let parts: Vec<&str> =
-            if text.contains([';', ' ']) { text.split([';', ' ']).collect() } else { text.split(',').collect() };
-        let mut values = Vec::new();
-        for part in parts.into_iter().map(str::trim).filter(|part| !part.is_empty()) {
-            match limit.take_text(part) {
-                Ok(value) => values.push(value),
-                Err(refusal) => self.refuse(&refusal),
-            }
-        }
-        if values.is_empty() && self.refusals.is_empty() {
-            self.refuse(&Refusal::new(limit.name, text, limit.range(), "Write figures parted by commas."));
-        }
-        values
+    /// Figures in a row; `None` where one of them cannot be taken.
+    pub(super) fn list(&mut self, text: &str, limit: Limit) -> Option<Vec<i64>> {
+        figures(text, &limit).map_err(|refusals| refusals.iter().for_each(|refusal| self.refuse(refusal))).ok()
     }
 }
 
 /// Reads the arguments.
 pub fn read(args: &DistanceArgs) -> Result<Asked, Vec<String>> {
-    let mut reader = Reader { refusals: Vec::new() };
-    let rules = args.rules.unwrap_or(RuleSetId::Iso138552010);
+    let mut reader = Reader::default();
+    let rules = rules(args, &mut reader);
     let kind = kind(args, rules, &mut reader);
     let mut steps = WorkedSteps::new();
     let mut remarks = Vec::new();
@@ -115,13 +107,12 @@ pub fn read(args: &DistanceArgs) -> Result<Asked, Vec<String>> {
             .push("Strokes per minute are not given. A two-hand trip needs them. Add --strokes-per-minute.".into());
     }
     let supplement = reader.length(args.supplement_mm.as_ref(), limits::SUPPLEMENT, "Supplemental distance");
-    if rules.rules().needs_supplement() && supplement.is_none() {
-        remarks.push("No supplemental distance Z is given; it is taken as 0.".into());
-    }
+    remarks.extend(unsaid::granted(args, rules, kind.as_ref()));
+    remarks.extend(unsaid::not_used(args, &mut reader));
     let installed = reader.length(args.installed_mm.as_ref(), limits::INSTALLED, "Installed distance");
     let zero = Time::ZERO;
-    match (kind, reader.refusals.is_empty()) {
-        (Some(kind), true) => Ok(Asked {
+    match (rules, kind, reader.refusals.is_empty()) {
+        (Some(rules), Some(kind), true) => Ok(Asked {
             rules,
             case: Case {
                 kind,
@@ -146,23 +137,37 @@ pub fn read(args: &DistanceArgs) -> Result<Asked, Vec<String>> {
     }
 }
 
+fn rules(args: &DistanceArgs, reader: &mut Reader) -> Option<RuleSetId> {
+    let found = RuleSetId::from_key(&args.rules);
+    if found.is_none() {
+        let keys: Vec<&str> = RuleSetId::ALL.iter().map(|id| id.key()).collect();
+        let allowed = format!("one of {}", keys.join(", "));
+        reader.refuse(&Refusal::new("Rule set", args.rules.as_str(), allowed, "Choose one of these."));
+    }
+    found
+}
+
+/// The stopping time to count, and of how many stops it is where several are given.
 fn stopping(
     args: &DistanceArgs,
-    rules: RuleSetId,
+    rules: Option<RuleSetId>,
     kind: Option<&SafeguardKind>,
     reader: &mut Reader,
     steps: &mut WorkedSteps,
     remarks: &mut Vec<String>,
 ) -> (Time, Option<usize>) {
-    let needs_stop = kind.is_some_and(SafeguardKind::needs_stop);
+    if !kind.is_some_and(SafeguardKind::needs_stop) {
+        return (Time::ZERO, None);
+    }
     if let Some(text) = &args.stops_ms {
-        let stops: Vec<Time> = reader.list(text, limits::STOPPING_TIME).into_iter().map(Time::from_base).collect();
+        let (Some(stops), Some(rules)) = (reader.list(text, limits::STOPPING_TIME), rules) else {
+            return (Time::ZERO, None);
+        };
+        let stops: Vec<Time> = stops.into_iter().map(Time::from_base).collect();
         let (taken, source) = rules.rules().value_taken();
         let Some(value) = taken.of(&stops) else {
-            if !stops.is_empty() {
-                let what = format!("{} stop", stops.len());
-                reader.refuse(&Refusal::new("Number of stops", what, "at least two", "Time more stops."));
-            }
+            let allowed = "two or more, for a standard deviation";
+            reader.refuse(&Refusal::new("Number of stops", stops.len().to_string(), allowed, "Time more stops."));
             return (Time::ZERO, None);
         };
         if let Some(summary) = summary_ms(&stops) {
@@ -193,23 +198,22 @@ fn stopping(
         return (value, Some(stops.len()));
     }
     let time = reader.time(args.stopping_ms.as_ref(), limits::STOPPING_TIME, "Stopping time");
-    if needs_stop && args.stopping_ms.is_none() {
+    if args.stopping_ms.is_none() {
         reader
             .refusals
             .push("No stopping time is given. Add --stopping-ms, or --stops-ms with several timed stops.".into());
     }
-    if needs_stop {
-        remarks.push("For the figure given: nothing here tells that it was measured, when, or on which press.".into());
-    }
+    remarks.push("For the figure given: nothing here tells that it was measured, when, or on which press.".into());
     (time.unwrap_or(Time::ZERO), None)
 }
 
-fn kind(args: &DistanceArgs, rules: RuleSetId, reader: &mut Reader) -> Option<SafeguardKind> {
+fn kind(args: &DistanceArgs, rules: Option<RuleSetId>, reader: &mut Reader) -> Option<SafeguardKind> {
     let height = |reader: &mut Reader| reader.needed(args.height_mm.as_ref(), limits::HEIGHT, "Height", "--height-mm");
     Some(match args.safeguard.as_str() {
         "light-curtain" => {
             // 29 CFR 1910.217(c) prints no term for penetration; every other rule set needs the detection capability.
-            let detection = if rules == RuleSetId::Us1910217 && args.detection_mm.is_none() {
+            let is_needed = rules.is_some_and(|rules| rules != RuleSetId::Us1910217);
+            let detection = if !is_needed && args.detection_mm.is_none() {
                 Length::from_base(limits::DETECTION.least)
             } else {
                 reader.needed(args.detection_mm.as_ref(), limits::DETECTION, "Detection capability", "--detection-mm")
@@ -230,7 +234,8 @@ fn kind(args: &DistanceArgs, rules: RuleSetId, reader: &mut Reader) -> Option<Sa
         "separate-beams" => {
             let beam = limits::HEIGHT.named("Height of a beam");
             let heights = match (&args.beam_heights_mm, &args.height_mm) {
-                (Some(text), _) | (None, Some(text)) => reader.list(text, beam),
+                (Some(text), _) => reader.list(text, beam).unwrap_or_default(),
+                (None, Some(text)) => reader.number(Some(text), beam, beam.name).into_iter().collect(),
                 (None, None) => {
                     reader
                         .refusals
@@ -258,7 +263,7 @@ fn kind(args: &DistanceArgs, rules: RuleSetId, reader: &mut Reader) -> Option<Sa
         "guard-opening" => match opening(args, reader) {
             Some(opening) => SafeguardKind::GuardOpening(opening),
             None => {
-                if args.opening_mm.is_none() {
+                if args.opening_mm.is_none() && args.opening_shape.is_none() {
                     reader.refusals.push("No opening is given. Add --opening-mm and --opening-shape.".into());
                 }
                 return None;
@@ -289,22 +294,28 @@ fn way_over(args: &DistanceArgs, reader: &mut Reader) -> WayOver {
     }
 }
 
+/// `None` where no opening is given, or one that cannot be taken.
 fn opening(args: &DistanceArgs, reader: &mut Reader) -> Option<Opening> {
-    let size = reader.length(args.opening_mm.as_ref(), limits::OPENING, "Opening")?;
-    let shape = match args.opening_shape {
-        Some(ShapeArg::Slot) => OpeningShape::Slot {
-            length: reader.length(args.slot_length_mm.as_ref(), limits::SLOT_LENGTH, "Slot length"),
-        },
-        Some(ShapeArg::Square) => OpeningShape::Square,
-        Some(ShapeArg::Round) => OpeningShape::Round,
-        None => {
-            reader
-                .refusals
-                .push("The shape of the opening is not given. Add --opening-shape slot, square or round.".into());
-            return None;
-        }
+    let size = reader.length(args.opening_mm.as_ref(), limits::OPENING, "Opening");
+    let length = match args.opening_shape {
+        Some(ShapeArg::Slot) => reader.length(args.slot_length_mm.as_ref(), limits::SLOT_LENGTH, "Slot length"),
+        _ => None,
     };
-    Some(Opening { size, shape })
+    match (&args.opening_mm, args.opening_shape) {
+        (Some(_), None) => reader
+            .refusals
+            .push("The shape of the opening is not given. Add --opening-shape slot, square or round.".into()),
+        (None, Some(_)) => {
+            reader.refusals.push("A shape is given and the size of the opening is not. Add --opening-mm.".into())
+        }
+        _ => {}
+    }
+    let shape = match args.opening_shape? {
+        ShapeArg::Slot => OpeningShape::Slot { length },
+        ShapeArg::Square => OpeningShape::Square,
+        ShapeArg::Round => OpeningShape::Round,
+    };
+    Some(Opening { size: size?, shape })
 }
 
 fn clutch(args: &DistanceArgs, kind: Option<&SafeguardKind>, reader: &mut Reader) -> Option<Clutch> {

@@ -1,208 +1,220 @@
-//! From the options of `predict` and `map` to drive, brake and stop path; every refusal at once. Figures keep every digit.
+//! From arguments to a checked drive and brake; every refusal at once.
+
+use std::fmt::Display;
+use std::path::Path;
 
 use calc::motion::{
-    Brake, Counterbalance, Drive, DriveData, Exhaust, Kinematics, PressureBrake, PressureBrakeData, RampBrake,
-    SliderCrank, StopPath,
+    Brake, Counterbalance, Drive, DriveData, Exhaust, Kinematics, LinkDrive, PressureBrake, PressureBrakeData,
+    RampBrake, SliderCrank, TorqueLaw, TravelRow, rad_from_deg,
 };
 use calc::plant_settings::PlantSettings;
-use calc::prediction::{PredictionRefusal, brake_of, kinematics_of};
-use calc::press::{Clutch, Press};
-use calc::refusal::Refusal;
-use calc::units::{Inertia, Mass, Torque};
+use calc::prediction::{BrakeData, PredictionData, PredictionRefusal, brake_of, kinematics_of, motion_path};
+use calc::press::{Clutch, DriveKind, Press};
+use calc::stop_test;
+use calc::units::Mass;
 
-use super::super::motion_args::{MotionArgs, PathArg};
+use super::super::args::{DriveArgs, PathArg};
 
-/// What moves, what stops it, and the press that it was read from.
-pub struct Motion {
-    pub drive: Drive,
-    pub brake: Brake,
-    pub path: StopPath,
-    pub press: Option<(PlantSettings, Press)>,
-    /// Whether the press gave everything, so that its own stop tests speak of this drive and brake.
-    pub is_all_of_press: bool,
-}
+const BAR: f64 = 1.0e5;
 
-/// A number with all its digits; point and comma are both decimal marks.
-pub fn number(name: &str, text: &str) -> Result<f64, String> {
-    let plain = text.trim().replace('\u{2212}', "-").replace(',', ".");
-    match plain.parse::<f64>() {
-        Ok(value) if value.is_finite() => Ok(value),
-        _ => Err(Refusal::new(name, text, "a number", "Write digits with a decimal point.").to_string()),
-    }
-}
-
-struct Reader {
-    refusals: Vec<String>,
+/// Gathers refusals.
+#[derive(Default)]
+pub struct Reader {
+    pub refusals: Vec<String>,
 }
 
 impl Reader {
-    fn number(&mut self, name: &str, text: Option<&String>) -> Option<f64> {
-        number(name, text?).map_err(|refusal| self.refusals.push(refusal)).ok()
+    /// A plain decimal number; point and comma are both decimal marks. Its range is judged by the stop model.
+    pub fn number(&mut self, text: &str, name: &str) -> Option<f64> {
+        let plain = text.trim().replace(',', ".");
+        let is_plain =
+            plain.chars().enumerate().all(|(index, c)| c.is_ascii_digit() || c == '.' || (c == '-' && index == 0));
+        let value = plain.parse::<f64>().ok().filter(|value| is_plain && value.is_finite());
+        if value.is_none() {
+            self.refusals.push(format!(
+                "{name} is {text}. It must be a number. Type digits with at most one decimal point or comma."
+            ));
+        }
+        value
     }
 
-    fn take<T, E: std::fmt::Display>(&mut self, found: Result<T, E>) -> Option<T> {
-        found.map_err(|refusal| self.refusals.push(refusal.to_string())).ok()
+    pub fn optional(&mut self, text: Option<&String>, name: &str, otherwise: f64) -> Option<f64> {
+        text.map_or(Some(otherwise), |text| self.number(text, name))
     }
 
-    fn missing(&mut self, name: &str, option: &str) {
-        self.refusals.push(format!("{name} is not given. Add {option}, or a press file that has it."));
+    pub fn needed(&mut self, text: Option<&String>, name: &str, option: &str) -> Option<f64> {
+        if text.is_none() {
+            self.refusals.push(format!("{name} is not given. Add {option}."));
+        }
+        text.and_then(|text| self.number(text, name))
+    }
+
+    /// Takes over a result, or notes why there is none.
+    pub fn take<T, E: Display>(&mut self, result: Result<T, E>) -> Option<T> {
+        result.map_err(|refusal| self.refusals.push(refusal.to_string())).ok()
     }
 }
 
-/// Reads the options.
-pub fn read(args: &MotionArgs) -> Result<Motion, Vec<String>> {
-    let mut reader = Reader { refusals: Vec::new() };
-    let press = args.press.as_ref().and_then(|path| reader.take(plant::open_press_file(path)));
-    if args.press.is_some() && press.is_none() {
-        return Err(reader.refusals);
-    }
-    let of_press = press.as_ref().map(|opened| &opened.1);
-    let drive = drive(args, of_press, &mut reader);
-    let path = match args.path {
-        Some(PathArg::Normal) => Some(StopPath::Normal),
-        Some(PathArg::Emergency) => Some(StopPath::Emergency),
-        None => None,
-    };
-    let brake = brake(args, path, of_press, &mut reader);
-    if let (Some(Brake::Pressure(_)), None) = (&brake, path) {
-        reader
-            .refusals
-            .push("The stop path is not given. A brake known by its pressures needs it. Add --path normal or --path emergency.".into());
-    }
-    let is_all_of_press = press.is_some()
+/// The press file that was named, if one was.
+pub fn press(args: &DriveArgs, reader: &mut Reader) -> Option<(PlantSettings, Press)> {
+    let path = args.press.as_ref()?;
+    reader.take(plant::open_press_file(path))
+}
+
+/// Whether the press gives the whole drive and brake, so that its own stop tests speak of them.
+pub fn is_all_of_press(args: &DriveArgs) -> bool {
+    args.press.is_some()
+        && args.link_table.is_none()
         && [&args.stroke_mm, &args.rod_mm, &args.moving_kg, &args.inertia_kgm2, &args.counterbalance_n]
             .into_iter()
             .chain([&args.friction_nm, &args.brake_ramp, &args.brake_pressure])
-            .all(Option::is_none);
-    match (drive, brake) {
-        (Some(drive), Some(brake)) if reader.refusals.is_empty() => {
-            Ok(Motion { drive, brake, path: path.unwrap_or(StopPath::Normal), press, is_all_of_press })
-        }
-        _ => Err(reader.refusals),
-    }
+            .all(Option::is_none)
 }
 
-fn drive(args: &MotionArgs, press: Option<&Press>, reader: &mut Reader) -> Option<Drive> {
-    let die = reader.number("Upper die mass", args.die_kg.as_ref());
-    let moving = reader.number("Moving mass", args.moving_kg.as_ref());
-    let inertia = reader.number("Inertia", args.inertia_kgm2.as_ref());
-    let counterbalance = reader.number("Counterbalance force", args.counterbalance_n.as_ref());
-    let friction = reader.number("Running friction", args.friction_nm.as_ref());
-    let kinematics = kinematics(args, press, reader);
+/// What the press file knows of its drive and brake.
+pub fn known(press: Option<&Press>) -> Option<&PredictionData> {
+    press.and_then(|press| press.prediction.as_ref())
+}
+
+/// The drive. What is not given comes from the press; with its slide comes its heaviest upper die, or the one that is given.
+pub fn drive(args: &DriveArgs, press: Option<&Press>, reader: &mut Reader) -> Option<Drive> {
+    let of_press = known(press).and_then(|data| data.slide_mass).map(Mass::to_f64);
+    let slide = match (&args.moving_kg, of_press) {
+        (None, Some(slide)) => Some(slide),
+        (text, _) => reader.needed(text.as_ref(), "Moving mass", "--moving-kg"),
+    };
+    let heaviest = press.and_then(|press| press.heaviest_die).map(Mass::to_f64);
+    let upper_die = match (&args.moving_kg, &args.die_kg, heaviest) {
+        (Some(_), _, _) => Some(0.0),
+        (None, None, Some(heaviest)) => Some(heaviest),
+        (None, None, None) if slide.is_none() => None,
+        (None, text, _) => reader.needed(text.as_ref(), "Upper die mass", "--die-kg"),
+    };
     if press.is_some_and(|press| matches!(press.clutch, Clutch::FullRevolution { .. })) {
         reader.refusals.push(PredictionRefusal::FullRevolution.to_string());
     }
-    let stored = press.and_then(|press| press.prediction.as_ref());
-    let mut pick = |name, option, text: &Option<String>, given: Option<f64>, stored: Option<f64>| {
-        if text.is_none() && stored.is_none() {
-            reader.missing(name, option);
-        }
-        given.or(stored)
+    drive_with(args, press, (slide, upper_die), reader)
+}
+
+/// The drive with a slide and an upper die of their own.
+pub fn drive_with(
+    args: &DriveArgs,
+    press: Option<&Press>,
+    (slide, upper_die): (Option<f64>, Option<f64>),
+    reader: &mut Reader,
+) -> Option<Drive> {
+    let kinematics = kinematics(args, press, reader);
+    let of_press = known(press);
+    let inertia = match (&args.inertia_kgm2, of_press.and_then(|data| data.inertia)) {
+        (None, Some(inertia)) => Some(inertia.to_f64()),
+        (text, _) => reader.needed(text.as_ref(), "Inertia", "--inertia-kgm2"),
     };
-    let slide = stored.and_then(|data| data.slide_mass).map(Mass::to_f64);
-    let slide_mass_kg = pick("The moving mass", "--moving-kg", &args.moving_kg, moving, slide);
-    let stored_inertia = stored.and_then(|data| data.inertia).map(Inertia::to_f64);
-    let inertia = pick("The inertia", "--inertia-kgm2", &args.inertia_kgm2, inertia, stored_inertia);
-    let stored_friction = stored.and_then(|data| data.friction).map(Torque::to_f64);
-    let option = "--friction-nm (0 is the cautious side)";
-    let friction = pick("The running friction", option, &args.friction_nm, friction, stored_friction);
-    let lift = counterbalance
-        .map(|force_n| Counterbalance::Force { force_n })
-        .or_else(|| stored.and_then(|data| data.counterbalance.as_motion()));
-    if args.counterbalance_n.is_none() && lift.is_none() {
-        reader.missing("The counterbalance force", "--counterbalance-n (0 for none)");
-    }
-    let heaviest = press.and_then(|press| press.heaviest_die).map(Mass::to_f64);
-    let die = match (moving, die.or(heaviest)) {
-        (Some(_), _) => 0.0,
-        (None, Some(die)) => die,
-        (None, None) if slide_mass_kg.is_some() && args.die_kg.is_none() => {
-            reader
-                .refusals
-                .push("The upper die is not given, and the press names no heaviest one. Add --die-kg.".into());
-            0.0
-        }
-        (None, None) => 0.0,
+    let of_press_friction = of_press.and_then(|data| data.friction).map_or(0.0, |torque| torque.to_f64());
+    let friction = reader.optional(args.friction_nm.as_ref(), "Running friction", of_press_friction);
+    let counterbalance = match (&args.counterbalance_n, of_press.and_then(|data| data.counterbalance.as_motion())) {
+        (None, Some(lift)) => Some(lift),
+        (text, _) => reader
+            .optional(text.as_ref(), "Counterbalance force", 0.0)
+            .map(|force_n| if force_n == 0.0 { Counterbalance::None } else { Counterbalance::Force { force_n } }),
     };
-    if !reader.refusals.is_empty() {
-        return None;
-    }
-    let data = DriveData {
+    reader.take(Drive::new(DriveData {
         kinematics: kinematics?,
         reduced_inertia_kg_m2: inertia?,
-        slide_mass_kg: slide_mass_kg?,
-        upper_die_mass_kg: die,
-        counterbalance: lift?,
+        slide_mass_kg: slide?,
+        upper_die_mass_kg: upper_die?,
+        counterbalance: counterbalance?,
         friction_torque_nm: friction?,
+    }))
+}
+
+fn kinematics(args: &DriveArgs, press: Option<&Press>, reader: &mut Reader) -> Option<Kinematics> {
+    if let Some(path) = &args.link_table {
+        return link_table(path, reader).map(Kinematics::LinkDrive);
+    }
+    if let Some(press) = press
+        && press.drive == DriveKind::Link
+        && known(Some(press)).is_some_and(|data| !data.travel.is_empty())
+        && args.stroke_mm.is_none()
+        && args.rod_mm.is_none()
+    {
+        return reader.take(kinematics_of(press));
+    }
+    let of_press = |length: Option<calc::units::Length>| length.map(|length| length.to_f64());
+    let stroke = match (&args.stroke_mm, press.and_then(|press| of_press(press.stroke))) {
+        (None, Some(stroke)) => Some(stroke),
+        (text, _) => reader.needed(text.as_ref(), "Stroke", "--stroke-mm"),
     };
-    reader.take(Drive::new(data))
+    let rod = match (&args.rod_mm, press.and_then(|press| of_press(press.rod))) {
+        (None, Some(rod)) => Some(rod),
+        (text, _) => reader.needed(text.as_ref(), "Connecting rod", "--rod-mm"),
+    };
+    reader.take(SliderCrank::new(stroke? * 1e-3, rod? * 1e-3)).map(Kinematics::SliderCrank)
 }
 
-fn kinematics(args: &MotionArgs, press: Option<&Press>, reader: &mut Reader) -> Option<Kinematics> {
-    let stroke = reader.number("Stroke", args.stroke_mm.as_ref());
-    let rod = reader.number("Connecting rod", args.rod_mm.as_ref());
-    if args.stroke_mm.is_none() && args.rod_mm.is_none() && press.is_some() {
-        return match kinematics_of(press?) {
-            Ok(found) => Some(found),
-            Err(PredictionRefusal::Missing(names)) => {
-                reader.refusals.push(format!("The press file lacks: {}.", names.join(", ")));
-                None
-            }
-            Err(refusal) => {
-                reader.refusals.push(refusal.to_string());
-                None
-            }
+/// Rows `angle_deg,travel_mm` of a drive that is no plain crank; a head is passed over.
+fn link_table(path: &Path, reader: &mut Reader) -> Option<LinkDrive> {
+    let text = reader
+        .take(std::fs::read_to_string(path).map_err(|error| format!("{} cannot be read: {error}.", path.display())))?;
+    let mut rows = Vec::new();
+    for (index, line) in text.lines().enumerate().filter(|(_, line)| !line.trim().is_empty()) {
+        let cells: Vec<&str> = line.split([',', ';', '\t']).collect();
+        if index == 0 && cells.iter().any(|cell| cell.chars().any(char::is_alphabetic)) {
+            continue;
+        }
+        let [angle, travel] = cells[..] else {
+            reader.refusals.push(format!(
+                "Line {} of the link table has {} figures. It must have two: angle in degrees and travel in mm.",
+                index + 1,
+                cells.len()
+            ));
+            return None;
         };
+        let angle = reader.number(angle, &format!("The angle in line {}", index + 1))?;
+        let travel = reader.number(travel, &format!("The travel in line {}", index + 1))?;
+        rows.push(TravelRow { angle_rad: rad_from_deg(angle), travel_m: travel * 1e-3 });
     }
-    let stored = |length: Option<calc::units::Length>| length.map(calc::units::Length::to_f64);
-    let stroke_mm = stroke.or_else(|| stored(press?.stroke));
-    let rod_mm = rod.or_else(|| stored(press?.rod));
-    if stroke_mm.is_none() && args.stroke_mm.is_none() {
-        reader.missing("The stroke", "--stroke-mm");
-    }
-    if rod_mm.is_none() && args.rod_mm.is_none() {
-        reader.missing("The connecting rod", "--rod-mm");
-    }
-    let crank = reader.take(SliderCrank::new(stroke_mm? / 1e3, rod_mm? / 1e3))?;
-    Some(Kinematics::SliderCrank(crank))
+    reader.take(LinkDrive::new(&rows))
 }
 
-fn brake(args: &MotionArgs, path: Option<StopPath>, press: Option<&Press>, reader: &mut Reader) -> Option<Brake> {
-    match (&args.brake_ramp, &args.brake_pressure, press) {
-        (Some(ramp), ..) => ramp_brake(ramp, reader),
-        (None, Some(pressure), _) => pressure_brake(pressure, path, reader),
-        (None, None, Some(press)) => reader.take(brake_of(press)),
-        (None, None, None) => {
-            reader.missing("The brake", "--brake-ramp or --brake-pressure");
+/// The stop path as the press's stop tests name it.
+pub fn path(args: &DriveArgs) -> stop_test::StopPath {
+    match args.path {
+        PathArg::Normal => stop_test::StopPath::Normal,
+        PathArg::Emergency => stop_test::StopPath::Emergency,
+    }
+}
+
+/// The torque law of the brake on the stop path; the brake comes from the press where none is given.
+pub fn law(args: &DriveArgs, press: Option<&Press>, reader: &mut Reader) -> Option<TorqueLaw> {
+    let path = motion_path(path(args));
+    let of_press = press.filter(|press| known(Some(press)).is_some_and(|data| data.brake != BrakeData::NotStated));
+    let brake = match (&args.brake_ramp, &args.brake_pressure) {
+        (None, None) if of_press.is_some() => of_press.and_then(|press| reader.take(brake_of(press))),
+        (Some(text), None) => ramp(text, reader).map(Brake::Ramp),
+        (None, Some(text)) => pressure(text, reader).map(Brake::Pressure),
+        _ => {
+            reader
+                .refusals
+                .push("No brake is given. Add --brake-ramp DELAY_MS,RISE_MS,TORQUE_NM or --brake-pressure.".into());
             None
         }
-    }
+    };
+    brake.map(|brake| brake.torque_law(path))
 }
 
-/// Figures in a row; a comma parts them, unless a semicolon does and the comma is the decimal mark.
-pub fn parts(text: &str) -> Vec<&str> {
-    let mark = if text.contains(';') { ';' } else { ',' };
-    text.split(mark).map(str::trim).collect()
-}
-
-fn ramp_brake(text: &str, reader: &mut Reader) -> Option<Brake> {
-    let [delay, rise, torque] = parts(text)[..] else {
-        reader.refusals.push(
-            Refusal::new(
-                "Ramp brake",
-                text,
-                "three figures: delay in ms, rise in ms, torque in N m",
-                "Write them parted by commas, such as 45,60,4200.",
-            )
-            .to_string(),
-        );
+fn ramp(text: &str, reader: &mut Reader) -> Option<RampBrake> {
+    let parts: Vec<&str> = if text.contains(';') { text.split(';').collect() } else { text.split(',').collect() };
+    let [delay, rise, torque] = parts[..] else {
+        reader.refusals.push(format!(
+            "The ramp brake has {} figures. It must have three: delay in ms, rise in ms, torque in N m.",
+            parts.len()
+        ));
         return None;
     };
-    let delay = reader.take(number("Delay of the ramp brake", delay));
-    let rise = reader.take(number("Rise of the ramp brake", rise));
-    let torque = reader.take(number("Torque of the ramp brake", torque));
-    let brake = RampBrake::new(delay? / 1e3, rise? / 1e3, torque?);
-    reader.take(brake).map(Brake::Ramp)
+    let delay = reader.number(delay, "Delay of the brake");
+    let rise = reader.number(rise, "Rise of the brake torque");
+    let torque = reader.number(torque, "Brake torque");
+    reader.take(RampBrake::new(delay? * 1e-3, rise? * 1e-3, torque?))
 }
 
 const KEYS: [&str; 10] = [
@@ -218,63 +230,45 @@ const KEYS: [&str; 10] = [
     "torque-nm",
 ];
 
-fn pressure_brake(text: &str, path: Option<StopPath>, reader: &mut Reader) -> Option<Brake> {
-    let before = reader.refusals.len();
-    let mut given: [Option<f64>; KEYS.len()] = [None; KEYS.len()];
-    for part in parts(text) {
+fn pressure(text: &str, reader: &mut Reader) -> Option<PressureBrake> {
+    let mut values = [None; KEYS.len()];
+    for part in text.split([',', ';']).map(str::trim).filter(|part| !part.is_empty()) {
         let Some((key, value)) = part.split_once('=') else {
-            reader
-                .refusals
-                .push(Refusal::new("Pressure brake", part, "KEY=VALUE", "Write such as full-bar=60.").to_string());
+            reader.refusals.push(format!("{part} is no KEY=VALUE. The keys are {}.", KEYS.join(", ")));
             continue;
         };
-        let Some(place) = KEYS.iter().position(|known| *known == key.trim()) else {
-            let known = KEYS.join(", ");
-            reader.refusals.push(
-                Refusal::new("A key of the pressure brake", key, format!("one of {known}"), "Correct the key.")
-                    .to_string(),
-            );
-            continue;
-        };
-        if given[place].is_some() {
-            reader.refusals.push(format!("{key} of the pressure brake is given twice. Keep one of them."));
+        match KEYS.iter().position(|known| *known == key.trim()) {
+            None => reader.refusals.push(format!("{key} is not known. The keys are {}.", KEYS.join(", "))),
+            Some(index) if values[index].is_some() => {
+                reader.refusals.push(format!("{key} is given twice. Give it once."))
+            }
+            Some(index) => values[index] = reader.number(value, KEYS[index]),
         }
-        given[place] = reader.take(number(KEYS[place], value));
     }
-    let [delay, full, clutch, high, low, touch, fast, slow, dump, torque] = given;
-    let mut needed = vec![("delay-ms", delay), ("full-bar", full), ("clutch-bar", clutch), ("touch-bar", touch)];
-    needed.push(("torque-nm", torque));
-    needed.push(if path == Some(StopPath::Emergency) { ("dump-ms", dump) } else { ("fast-ms", fast) });
-    if [high, low, slow].iter().any(Option::is_some) {
-        needed.extend([("high-bar", high), ("low-bar", low), ("slow-ms", slow), ("fast-ms", fast)]);
+    for (key, value) in KEYS.iter().zip(&values) {
+        if value.is_none() && !reader.refusals.iter().any(|refusal| refusal.starts_with(key)) {
+            reader.refusals.push(format!("{key} of the pressure brake is not given. Add it to --brake-pressure."));
+        }
     }
-    let mut absent: Vec<&str> = needed.iter().filter(|part| part.1.is_none()).map(|part| part.0).collect();
-    absent.dedup();
-    if reader.refusals.len() == before && !absent.is_empty() {
-        reader.refusals.push(format!("The pressure brake lacks {}. Add them as KEY=VALUE.", absent.join(", ")));
-    }
-    if reader.refusals.len() != before {
-        return None;
-    }
-    // The time constant of the other stop path is not used on this one; it need not be known.
-    let fast_s = fast.or(dump)? / 1e3;
-    let exhaust = match (high, low, slow) {
-        (Some(high), Some(low), Some(slow)) if high != low => Exhaust::TwoStage {
-            fast_time_constant_s: fast_s,
-            metered_time_constant_s: slow / 1e3,
-            metered_from_pa: high * 1e5,
-            metered_to_pa: low * 1e5,
-        },
-        _ => Exhaust::SingleStage { time_constant_s: fast_s },
+    let [delay, full, clutch, high, low, touch, fast, slow, dump, torque] = values;
+    let (high, low) = (high? * BAR, low? * BAR);
+    let exhaust = if high == low {
+        Exhaust::SingleStage { time_constant_s: fast? * 1e-3 }
+    } else {
+        Exhaust::TwoStage {
+            fast_time_constant_s: fast? * 1e-3,
+            metered_time_constant_s: slow? * 1e-3,
+            metered_from_pa: high,
+            metered_to_pa: low,
+        }
     };
-    let brake = PressureBrake::new(PressureBrakeData {
+    reader.take(PressureBrake::new(PressureBrakeData {
         full_torque_nm: torque?,
-        dead_time_s: delay? / 1e3,
-        operating_pressure_pa: full? * 1e5,
-        clutch_release_pressure_pa: clutch? * 1e5,
-        touch_pressure_pa: touch? * 1e5,
+        dead_time_s: delay? * 1e-3,
+        operating_pressure_pa: full? * BAR,
+        clutch_release_pressure_pa: clutch? * BAR,
+        touch_pressure_pa: touch? * BAR,
         exhaust,
-        emergency_time_constant_s: dump.or(fast)? / 1e3,
-    });
-    reader.take(brake).map(Brake::Pressure)
+        emergency_time_constant_s: dump? * 1e-3,
+    }))
 }

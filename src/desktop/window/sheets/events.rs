@@ -5,7 +5,7 @@ use calc::calendar::Moment;
 use calc::in_force::{overtaken_by, tests_in_force};
 use calc::press::{Event, EventKind, Press, Touch};
 use calc::safeguard::Safeguard;
-use egui::{Grid, Label, RichText};
+use egui::{Align, Grid, Label, Layout, RichText, vec2};
 use figure::Role;
 
 use super::form::{Form, ROW};
@@ -66,7 +66,7 @@ fn entry_ui(ui: &mut egui::Ui, press: &Press, form: &mut Form<'_>, draft: &mut E
         ui.set_min_height(ROW);
         let id = form.owner.with("event-at");
         let shown = draft.at.map_or_else(String::new, |at| at.to_string());
-        let kind = FieldKind::words("Date, time").bare().wide(130.0).hint("2026-11-03 14:30");
+        let kind = FieldKind::words("Date, time").bare().wide(148.0).hint("year-month-day");
         match field_ui(ui, id, kind, &shown, form.drafts, |text| Moment::parse("Date of the event", text)) {
             Some(Commit::Set(at, _)) => draft.at = Some(at),
             Some(Commit::Cleared(_)) => draft.at = None,
@@ -107,11 +107,11 @@ fn kind_ui(ui: &mut egui::Ui, form: &Form<'_>, draft: &mut EventDraft) {
     let shown = draft.kind.map_or("what happened", EventKind::words);
     let list = egui::ComboBox::from_id_salt(form.owner.with("event-kind")).width(190.0).height(400.0);
     let response = list.selected_text(shown).show_ui(ui, |ui| {
-        for kind in EventKind::ALL {
-            ui.selectable_value(&mut draft.kind, Some(*kind), kind.words());
-        }
+        let choose = |kind: &EventKind| ui.selectable_value(&mut draft.kind, Some(*kind), kind.words()).clicked();
+        let is_chosen = EventKind::ALL.iter().map(choose).fold(false, |any, one| any | one);
+        close_after_choice(ui, is_chosen)
     });
-    name_list(ui, &response.response, "What happened");
+    name_list(ui, &response.response, "What happened", response.inner == Some(true));
 }
 
 fn safeguard_ui(ui: &mut egui::Ui, press: &Press, form: &Form<'_>, draft: &mut EventDraft) {
@@ -124,16 +124,30 @@ fn safeguard_ui(ui: &mut egui::Ui, press: &Press, form: &Form<'_>, draft: &mut E
     };
     ui.add_enabled_ui(is_of_one, |ui| {
         let response = list.selected_text(shown).show_ui(ui, |ui| {
-            for safeguard in &press.safeguards {
-                ui.selectable_value(&mut draft.safeguard, Some(safeguard.name.clone()), &safeguard.name);
-            }
+            let choose = |safeguard: &Safeguard| {
+                let name = &safeguard.name;
+                ui.selectable_value(&mut draft.safeguard, Some(name.clone()), name).clicked()
+            };
+            let is_chosen = press.safeguards.iter().map(choose).fold(false, |any, one| any | one);
+            close_after_choice(ui, is_chosen)
         });
-        name_list(ui, &response.response, "Safeguard it happened to");
+        name_list(ui, &response.response, "Safeguard it happened to", response.inner == Some(true));
     });
 }
 
-/// Gives a list without a label before it a name for screen readers.
-fn name_list(ui: &egui::Ui, response: &egui::Response, name: &str) {
+/// Closes the list that is being drawn when something was chosen: a click does that by itself, the keyboard does not.
+fn close_after_choice(ui: &mut egui::Ui, is_chosen: bool) -> bool {
+    if is_chosen {
+        ui.close();
+    }
+    is_chosen
+}
+
+/// Gives a list without a label before it a name for screen readers, and the keyboard back after a choice.
+fn name_list(ui: &egui::Ui, response: &egui::Response, name: &str, is_chosen: bool) {
+    if is_chosen {
+        response.request_focus();
+    }
     ui.ctx().accesskit_node_builder(response.id, |node| node.set_label(name));
 }
 
@@ -149,24 +163,28 @@ fn log_ui(ui: &mut egui::Ui, cx: &SheetContext, wishes: &mut Wishes) {
         std::cmp::Reverse((at.date, at.time, *index))
     });
     let faint = theme::colour(ui.ctx(), Role::Faint);
+    let note_width = (ui.available_width() - 760.0).clamp(180.0, 520.0);
     Grid::new("events").num_columns(6).spacing([24.0, 6.0]).min_row_height(26.0).show(ui, |ui| {
         for head in ["Date", "Event", "Safeguard", "Note", "Now", ""] {
             ui.label(RichText::new(head).size(12.5).color(faint));
         }
         ui.end_row();
         for index in order {
-            event_row_ui(ui, press, index, wishes);
+            event_row_ui(ui, press, index, note_width, wishes);
             ui.end_row();
         }
     });
 }
 
-fn event_row_ui(ui: &mut egui::Ui, press: &Press, index: usize, wishes: &mut Wishes) {
+fn event_row_ui(ui: &mut egui::Ui, press: &Press, index: usize, note_width: f32, wishes: &mut Wishes) {
     let event = &press.events[index];
     ui.label(event.at.to_string());
     ui.label(capitalised(event.kind.words()));
     ui.label(event.safeguard.as_deref().unwrap_or("whole press"));
-    ui.add(Label::new(&event.note).truncate());
+    ui.allocate_ui_with_layout(vec2(note_width, 26.0), Layout::left_to_right(Align::Center), |ui| {
+        ui.set_min_width(note_width);
+        ui.add(Label::new(&event.note).truncate());
+    });
     let is_open = still_open(press, event).is_some();
     let role = if is_open { Role::Retime } else { Role::Faint };
     ui.label(RichText::new(standing(press, event)).color(theme::colour(ui.ctx(), role)));

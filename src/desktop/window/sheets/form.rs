@@ -145,9 +145,15 @@ impl Form<'_> {
                 for one in all {
                     if ui.selectable_label(chosen == Some(*one), words(*one)).clicked() && chosen != Some(*one) {
                         wished = Some(*one);
+                        // A click closes the list by itself, the keyboard does not.
+                        ui.close();
                     }
                 }
             });
+            if wished.is_some() {
+                // The list is gone with the choice in it; the keyboard goes back to where it was opened.
+                response.response.request_focus();
+            }
             response.response.labelled_by(label.id);
             wished
         })
@@ -203,8 +209,8 @@ pub fn label_ui(ui: &mut egui::Ui, width: f32, text: &str) -> Response {
 }
 
 /// Keeps the one place of a sheet where refusals stand, always as high, so that nothing moves when one comes or goes.
-pub fn keep_strip(ui: &mut egui::Ui) -> Rect {
-    let size = vec2(ui.available_width(), 44.0);
+pub fn keep_strip(ui: &mut egui::Ui, lines: u8) -> Rect {
+    let size = vec2(ui.available_width(), 10.0 + 18.0 * f32::from(lines));
     ui.allocate_exact_size(size, Sense::hover()).0
 }
 
@@ -218,7 +224,8 @@ pub fn fill_strip(ui: &mut egui::Ui, rect: Rect, refused: &[String]) {
     ui.painter().rect_filled(Rect::from_min_size(rect.min, vec2(4.0, rect.height())), 0.0, colour);
     let inner = Rect::from_min_max(rect.min + vec2(14.0, 4.0), rect.max - vec2(6.0, 4.0));
     ui.scope_builder(UiBuilder::new().max_rect(inner).layout(Layout::top_down(Align::Min)), |ui| {
-        egui::ScrollArea::vertical().id_salt("refused").auto_shrink(false).show(ui, |ui| {
+        let area = egui::ScrollArea::vertical().id_salt("refused").auto_shrink(false);
+        area.min_scrolled_height(0.0).max_height(inner.height()).show(ui, |ui| {
             ui.spacing_mut().item_spacing.y = 1.0;
             for words in refused {
                 ui.label(words);

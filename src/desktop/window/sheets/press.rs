@@ -4,6 +4,7 @@ use calc::assess::capitalised;
 use calc::decimal::Side;
 use calc::limits::{self, Limit};
 use calc::press::{BrakeMonitor, Clutch, ClutchMedium, Conformity, DriveKind, Frame, Press, check_tag};
+use calc::refusal::Refusal;
 use calc::round::{Towards, time_text};
 use calc::units::{Length, Mass, Rate, Time};
 use egui::{Id, RichText, vec2};
@@ -11,6 +12,7 @@ use figure::Role;
 
 use super::events::{EventDraft, events_ui};
 use super::form::{Form, ROW, fill_strip, keep_strip, label_ui};
+use crate::document::{Document, Unreadable};
 use crate::window::context::SheetContext;
 use crate::window::theme;
 use crate::window::widgets::{Commit, Drafts, FieldKind, caption, heading, length_field};
@@ -30,6 +32,11 @@ pub struct PressDrafts {
 }
 
 impl PressDrafts {
+    /// What could not be taken, in words.
+    pub fn refused(&self) -> Vec<String> {
+        self.fields.refused()
+    }
+
     fn follow(&mut self, press: &Press) {
         if self.tag != press.tag {
             *self = Self { tag: press.tag.clone(), ..Self::default() };
@@ -37,10 +44,10 @@ impl PressDrafts {
     }
 }
 
-/// Width of one group of fields.
-const GROUP: f32 = 326.0;
+/// Least and greatest width of one group of fields.
+const GROUP: [f32; 2] = [320.0, 420.0];
+const BETWEEN: f32 = 32.0;
 const LABEL: f32 = 128.0;
-const FIELD: f32 = 178.0;
 
 /// Draws the sheet.
 pub fn press_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut PressDrafts, wishes: &mut Wishes) {
@@ -48,15 +55,17 @@ pub fn press_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut PressDrafts, 
     ui.push_id((cx.press.tag.as_str(), "press"), |ui| {
         egui::ScrollArea::vertical().id_salt("sheet").auto_shrink(false).show(ui, |ui| {
             let mut refused = Vec::new();
-            let strip = keep_strip(ui);
+            let strip = keep_strip(ui, 1);
             let PressDrafts { fields, awaits_points, event, .. } = drafts;
             let owner = Id::unique((cx.press.tag.as_str(), "press-fields"));
-            let mut form = Form { owner, drafts: fields, label: LABEL, field: FIELD, refused: &mut refused };
-            ui.horizontal_wrapped(|ui| {
-                ui.spacing_mut().item_spacing = vec2(36.0, 0.0);
-                group_ui(ui, |ui| identity_ui(ui, cx, &mut form, wishes));
-                group_ui(ui, |ui| build_ui(ui, cx, &mut form, awaits_points, wishes));
-                group_ui(ui, |ui| use_ui(ui, cx, &mut form, wishes));
+            let group = ((ui.available_width() - 2.0 * BETWEEN) / 3.0).clamp(GROUP[0], GROUP[1]);
+            let field = group - LABEL - 14.0;
+            let mut form = Form { owner, drafts: fields, label: LABEL, field, refused: &mut refused };
+            ui.horizontal_top(|ui| {
+                ui.spacing_mut().item_spacing = vec2(BETWEEN, 0.0);
+                group_ui(ui, group, |ui| identity_ui(ui, cx, &mut form, wishes));
+                group_ui(ui, group, |ui| build_ui(ui, cx, &mut form, awaits_points, wishes));
+                group_ui(ui, group, |ui| use_ui(ui, cx, &mut form, wishes));
             });
             ui.add_space(8.0);
             events_ui(ui, cx, &mut form, event, wishes);
@@ -65,9 +74,9 @@ pub fn press_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut PressDrafts, 
     });
 }
 
-fn group_ui(ui: &mut egui::Ui, content: impl FnOnce(&mut egui::Ui)) {
-    ui.allocate_ui_with_layout(vec2(GROUP, 0.0), egui::Layout::top_down(egui::Align::Min), |ui| {
-        ui.set_width(GROUP);
+fn group_ui(ui: &mut egui::Ui, width: f32, content: impl FnOnce(&mut egui::Ui)) {
+    ui.vertical(|ui| {
+        ui.set_width(width);
         ui.spacing_mut().item_spacing = vec2(8.0, 2.0);
         content(ui);
     });
@@ -76,8 +85,8 @@ fn group_ui(ui: &mut egui::Ui, content: impl FnOnce(&mut egui::Ui)) {
 fn identity_ui(ui: &mut egui::Ui, cx: &SheetContext, form: &mut Form<'_>, wishes: &mut Wishes) {
     let press = cx.press;
     heading(ui, "Identity");
-    let kind = FieldKind::words("Tag").wide(FIELD);
-    let read = |text: &str| check_tag(text.trim()).map(|()| text.trim().to_owned());
+    let kind = FieldKind::words("Tag").wide(form.field);
+    let read = |text: &str| free_tag(cx.document, press, text.trim());
     if let Some(tag) = form.needed(ui, "tag", kind, &press.tag, read) {
         wishes.edit_press(press, "change tag", move |press| press.tag = tag);
     }
@@ -102,6 +111,18 @@ fn identity_ui(ui: &mut egui::Ui, cx: &SheetContext, form: &mut Form<'_>, wishes
     if let Some(conformity) = form.choice(ui, "ce-mark", "CE mark", chosen, conformity_words) {
         wishes.edit_press(press, "change CE mark", move |press| press.conformity = conformity);
     }
+}
+
+/// A tag that no other press bears, so that the refusal stands at the field and not after it.
+fn free_tag(document: &Document, press: &Press, tag: &str) -> Result<String, Refusal> {
+    check_tag(tag)?;
+    let is_borne = |other: &str| other != press.tag && other.eq_ignore_ascii_case(tag);
+    let is_file = |file: &Unreadable| file.path.file_stem().is_some_and(|stem| stem.eq_ignore_ascii_case(tag));
+    if document.presses.iter().any(|other| is_borne(&other.tag)) || document.unreadable.iter().any(is_file) {
+        let allowed = "one that no other press of the plant bears";
+        return Err(Refusal::new("Press tag", tag, allowed, "Choose another tag."));
+    }
+    Ok(tag.to_owned())
 }
 
 /// The clutches that a form offers.
@@ -159,13 +180,16 @@ fn clutch_ui(ui: &mut egui::Ui, press: &Press, form: &mut Form<'_>, awaits_point
         });
         return;
     }
-    let taken = points.map(|points| i64::from(points) * 1000);
     let limit = &limits::ENGAGING_POINTS;
     let read = |text: &str| {
         let count = limit.take_text(text)?;
-        if count % 1000 == 0 { Ok((count / 1000) as u32) } else { limit.take(0).map(|_| 0) }
+        if count % 1000 != 0 {
+            let allowed = format!("a whole number {}", limit.range());
+            return Err(Refusal::new(limit.name, text.trim(), allowed, "Count the places where the clutch engages."));
+        }
+        Ok((count / 1000) as u32)
     };
-    let taken = taken.map_or_else(String::new, |count| (count / 1000).to_string());
+    let taken = points.map_or_else(String::new, |points| points.to_string());
     if let Some(engaging_points) =
         form.needed(ui, "engaging-points", FieldKind::figure("Engaging points", ""), &taken, read)
     {
@@ -211,8 +235,9 @@ fn use_ui(ui: &mut egui::Ui, cx: &SheetContext, form: &mut Form<'_>, wishes: &mu
         });
     }
     let (words, role) = monitor_words(cx);
-    ui.allocate_ui(vec2(GROUP, 52.0), |ui| {
-        ui.set_min_size(vec2(GROUP, 52.0));
+    let size = vec2(ui.available_width(), 38.0);
+    ui.allocate_ui(size, |ui| {
+        ui.set_min_size(size);
         ui.label(RichText::new(words).size(12.5).color(theme::colour(ui.ctx(), role)));
     });
 }
@@ -227,19 +252,16 @@ fn monitor_words(cx: &SheetContext) -> (String, Role) {
         return ("No safeguard tells yet what setting it allows.".into(), Role::Faint);
     };
     let most = time_text(allowed, Towards::Smaller);
-    let name = capitalised(name);
+    let most = format!("{} allows at most {most}", capitalised(name));
     match &cx.press.monitor {
-        None => (
-            format!("{name} allows at most {most}, if the monitor times the same stop on the same clock."),
-            Role::Faint,
-        ),
+        None => (format!("{most},\nif the monitor times the same stop on the same clock."), Role::Faint),
         Some(monitor) if monitor.setting <= allowed => {
             let spare = time_text(allowed - monitor.setting, Towards::Smaller);
-            (format!("{name} allows at most {most}: {spare} to spare, on the same clock."), Role::Faint)
+            (format!("{most},\n{spare} more than set, on the same clock."), Role::Faint)
         }
         Some(monitor) => {
             let over = time_text(monitor.setting - allowed, Towards::Greater);
-            (format!("Set too long: {name} allows at most {most}, {over} less, on the same clock."), Role::Short)
+            (format!("Set too long. {most},\n{over} less than set, on the same clock."), Role::Short)
         }
     }
 }
@@ -299,5 +321,28 @@ const fn conformity_words(conformity: Option<Conformity>) -> &'static str {
         None => "not stated",
         Some(Conformity::CeMarked) => "yes",
         Some(Conformity::WithoutCe) => "no",
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::window::sheets::sample::{plant_settings, press};
+    use std::sync::Arc;
+
+    #[test]
+    fn a_tag_of_another_press_or_of_an_unreadable_file_is_refused() {
+        let mut other = press();
+        other.tag = "P-08".into();
+        let document = Document {
+            folder: None,
+            settings: plant_settings(),
+            presses: vec![Arc::new(press()), Arc::new(other)],
+            unreadable: vec![Unreadable { path: "presses/P-09.ron".into(), why: "cut short".into() }],
+            renamed: Vec::new(),
+        };
+        for (tag, is_free) in [("P-10", true), ("P-07", true), ("p-08", false), ("P-09", false), ("P 10", false)] {
+            assert_eq!(free_tag(&document, &press(), tag).is_ok(), is_free, "{tag}");
+        }
     }
 }

@@ -34,7 +34,7 @@ pub struct RecordsDrafts {
 }
 
 struct Preview {
-    made_from: (Arc<Press>, calc::plant_settings::PlantSettings, Paper, LengthUnit, [SignOff; 3]),
+    made_from: (Arc<Press>, calc::plant_settings::PlantSettings, Paper, LengthUnit, [SignOff; 3], Date),
     record: Record,
 }
 
@@ -111,7 +111,8 @@ fn sign_off_ui(ui: &mut Ui, cx: &SheetContext, drafts: &mut RecordsDrafts) {
                 [(&mut signed.name, "name", 140.0), (&mut signed.role, "role", 120.0), (&mut signed.date, "date", 90.0)]
             {
                 let id = Id::unique(("sign-off", &cx.press.tag, what, name));
-                let response = ui.add(TextEdit::singleline(text).id(id).desired_width(width));
+                let edit = TextEdit::singleline(text).id(id);
+                let response = ui.add_sized([width, ui.spacing().interact_size.y], edit);
                 response
                     .widget_info(|| egui::WidgetInfo::labeled(egui::Role::TextInput, true, format!("{what}, {name}")));
             }
@@ -164,11 +165,10 @@ fn kept_ui(ui: &mut Ui, cx: &SheetContext) {
 }
 
 fn preview_ui(ui: &mut Ui, cx: &SheetContext, drafts: &mut RecordsDrafts) {
-    let made_from = (cx.press.clone(), cx.document.settings.clone(), drafts.paper, cx.unit, drafts.sign_off.clone());
+    let settings = cx.document.settings.clone();
+    let made_from = (cx.press.clone(), settings, drafts.paper, cx.unit, drafts.sign_off.clone(), cx.today);
     if drafts.preview.as_ref().is_none_or(|preview| preview.made_from != made_from) {
-        let given =
-            Given { today: cx.today, version: env!("CARGO_PKG_VERSION"), renderer: String::new(), is_sample: false };
-        let record = make(cx.document, cx.press, drafts, &given, cx.unit);
+        let record = make(cx.document, cx.press, drafts, (cx.today, env!("CARGO_PKG_VERSION")), cx.unit);
         drafts.preview = Some(Preview { made_from, record });
     }
     let width = ui.available_width().clamp(380.0, 760.0);
@@ -180,13 +180,19 @@ fn preview_ui(ui: &mut Ui, cx: &SheetContext, drafts: &mut RecordsDrafts) {
     }
 }
 
-fn make(document: &Document, press: &Press, drafts: &RecordsDrafts, given: &Given, unit: LengthUnit) -> Record {
+fn make(
+    document: &Document,
+    press: &Press,
+    drafts: &RecordsDrafts,
+    (date, version): (Date, &'static str),
+    unit: LengthUnit,
+) -> Record {
     press_record(&RecordInput {
         plant: &document.settings,
         press,
         rules: document.settings.rules,
-        date: given.today,
-        version: given.version,
+        date,
+        version,
         unit,
         paper: drafts.paper,
         sign_off: drafts.sign_off.clone(),
@@ -201,7 +207,9 @@ pub fn print(
     given: &Given,
     unit: LengthUnit,
 ) -> Result<PathBuf, String> {
-    let pdf = make(document, press, drafts, given, unit).to_pdf().map_err(|refusal| refusal.to_string())?;
+    let pdf = make(document, press, drafts, (given.today, given.version), unit)
+        .to_pdf()
+        .map_err(|refusal| refusal.to_string())?;
     if drafts.path.trim().is_empty() {
         let folder =
             document.folder.as_deref().ok_or("The plant has no folder yet. Type where the record shall go.")?;

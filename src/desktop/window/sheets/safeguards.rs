@@ -15,7 +15,7 @@ use figure::Role;
 use crate::window::context::SheetContext;
 use crate::window::theme;
 use crate::window::widgets::{
-    Commit, Drafts, FieldKind, answer_badge, caption, card_ui, heading, step_table_ui, text_field,
+    Commit, Drafts, FieldKind, answer_badge, caption, card_ui, heading, no_result_badge, step_table_ui, text_field,
 };
 use crate::window::wishes::{Wish, Wishes};
 
@@ -25,6 +25,13 @@ pub struct SafeguardsDrafts {
     fields: Drafts,
     add: add::AddDraft,
     compared: compare::Compared,
+}
+
+impl SafeguardsDrafts {
+    /// What could not be taken, in words.
+    pub fn refused(&self) -> Vec<String> {
+        self.fields.refused()
+    }
 }
 
 /// The card that is being edited: which press, which place on it.
@@ -42,9 +49,8 @@ impl Card<'_> {
         &self.cx.result.assessments[self.index]
     }
 
-    /// The identity of a field: the press, the safeguard and the field, wherever they stand.
     fn id(&self, field: &str) -> Id {
-        Id::unique(("safeguard", &self.cx.press.tag, self.index, field))
+        field_id(self.cx, self.index, field)
     }
 
     /// Asks for a change of this safeguard.
@@ -71,13 +77,25 @@ pub fn safeguards_ui(ui: &mut Ui, cx: &SheetContext, drafts: &mut SafeguardsDraf
         });
         ui.add_space(6.0);
     }
-    add::add_ui(ui, cx, &mut drafts.add, wishes);
+    if add::add_ui(ui, cx, &mut drafts.add, wishes) {
+        // What is measured next is the distance of the new one.
+        drafts.fields.focus(field_id(cx, cx.press.safeguards.len(), "distance"));
+    }
+}
+
+/// The identity of a field: the press, the safeguard and the field, wherever they stand.
+fn field_id(cx: &SheetContext, index: usize, field: &str) -> Id {
+    Id::unique(("safeguard", &cx.press.tag, index, field))
 }
 
 fn head_ui(ui: &mut Ui, card: &Card, drafts: &mut SafeguardsDrafts, wishes: &mut Wishes) {
     let (safeguard, assessment) = (card.safeguard(), card.assessment());
     ui.horizontal(|ui| {
-        answer_badge(ui, assessment.answer);
+        if card.cx.is_without_result {
+            no_result_badge(ui);
+        } else {
+            answer_badge(ui, assessment.answer);
+        }
         ui.add_space(6.0);
         if card.index == card.cx.safeguard {
             let kind = FieldKind::words("Name").bare().wide(200.0);
@@ -98,7 +116,8 @@ fn head_ui(ui: &mut Ui, card: &Card, drafts: &mut SafeguardsDrafts, wishes: &mut
         }
         caption(ui, safeguard.kind.words());
         if card.index != card.cx.safeguard {
-            if let Some(figures) = sentence::figures(assessment, card.cx.unit) {
+            let figures = sentence::figures(assessment, card.cx.unit).filter(|_| !card.cx.is_without_result);
+            if let Some(figures) = figures {
                 ui.label(figures);
             }
             if ui.button("Show").clicked() {
@@ -125,9 +144,15 @@ fn body_ui(ui: &mut Ui, card: &Card, drafts: &mut SafeguardsDrafts, wishes: &mut
         ui.vertical(|ui| {
             ui.set_width(430.0);
             measures::time_parts_ui(ui, card, &mut drafts.fields, wishes);
-            allowed_ui(ui, assessment);
+            if !cx.is_without_result {
+                allowed_ui(ui, assessment);
+            }
         });
     });
+    if cx.is_without_result {
+        caption(ui, "Worked steps and the other rule sets are shown again once every entry can be taken.");
+        return;
+    }
     for reason in &assessment.reasons {
         let colour = theme::colour(ui.ctx(), crate::window::app::answer_role(reason.answer));
         ui.horizontal_wrapped(|ui| {

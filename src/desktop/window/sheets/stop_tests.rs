@@ -40,11 +40,21 @@ pub struct StopTestsDrafts {
 }
 
 impl StopTestsDrafts {
+    /// What could not be taken, in words.
+    pub fn refused(&self) -> Vec<String> {
+        self.grid.refused_cells().into_iter().chain(self.fields.refused()).collect()
+    }
+
     /// What was typed for another press, or before tests came or went, belongs to no field of this one.
-    fn follow(&mut self, press: &Press) {
+    fn follow(&mut self, press: &Press, governing: Option<usize>) {
         let tests = press.stop_tests.len();
         if self.tag != press.tag {
             *self = Self { tag: press.tag.clone(), tests, ..Self::default() };
+            self.grid.chosen = governing.unwrap_or(tests.saturating_sub(1));
+            if tests == 0 {
+                // On a press without tests this is what one comes for: the cursor stands in the first field.
+                self.fields.focus(first_test_id(press).with("angle"));
+            }
         }
         if self.tests != tests {
             if tests < self.tests {
@@ -53,7 +63,7 @@ impl StopTestsDrafts {
             self.fields.clear();
             self.tests = tests;
         }
-        self.grid.chosen = self.grid.chosen.min(tests.saturating_sub(1));
+        self.grid.follow(tests);
     }
 }
 
@@ -65,7 +75,8 @@ const FIELD: f32 = 216.0;
 
 /// Draws the sheet.
 pub fn stop_tests_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDrafts, wishes: &mut Wishes) {
-    drafts.follow(cx.press);
+    let governing = cx.assessment().and_then(|assessment| assessment.governing);
+    drafts.follow(cx.press, governing.map(|governing| governing.test));
     ui.push_id((cx.press.tag.as_str(), "stop-tests"), |ui| {
         egui::ScrollArea::vertical().id_salt("sheet").auto_shrink(false).show(ui, |ui| {
             if cx.press.stop_tests.is_empty() {
@@ -92,7 +103,7 @@ fn tests_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDrafts, 
             grid_ui(ui, cx.press, &rows, &mut drafts.grid, wishes);
             let mut refused = drafts.grid.refused(cx.press);
             ui.add_space(4.0);
-            let strip = keep_strip(ui);
+            let strip = keep_strip(ui, 1);
             let fields_width = if is_wide { left } else { left - GAP - SIDE };
             ui.horizontal_top(|ui| {
                 ui.spacing_mut().item_spacing.x = GAP;
@@ -148,8 +159,10 @@ fn actions_ui(
         }
         ui.add_space(12.0);
         let words = match shown {
-            Some(safeguard) => format!("What governs is told for {}, {}.", safeguard.name, safeguard.stop_path.words()),
-            None => "The press has no safeguard yet, so none of the tests governs.".into(),
+            Some(safeguard) => {
+                format!("Seen from the {}, which calls for the {}.", safeguard.name, safeguard.stop_path.words())
+            }
+            None => "The press has no safeguard yet, so no test governs.".into(),
         };
         caption(ui, words);
     });
@@ -184,10 +197,15 @@ fn edit_test(press: &Press, chosen: usize, edit: Edit, wishes: &mut Wishes) {
 }
 
 /// The form of the first test of a press: every field is empty until somebody fills it in.
+/// What the ids of the fields of a press's first test begin with.
+fn first_test_id(press: &Press) -> Id {
+    Id::unique((press.tag.as_str(), "first-stop-test"))
+}
+
 fn first_test_ui(ui: &mut egui::Ui, cx: &SheetContext, drafts: &mut StopTestsDrafts, wishes: &mut Wishes) {
     ui.label("No stop was timed on this press yet. State how the first test is made; its stops are typed afterwards.");
-    let owner = Id::unique((cx.press.tag.as_str(), "first-stop-test"));
-    let strip = keep_strip(ui);
+    let owner = first_test_id(cx.press);
+    let strip = keep_strip(ui, 1);
     let mut refused = Vec::new();
     let mut form = Form { owner, drafts: &mut drafts.fields, label: LABEL, field: FIELD, refused: &mut refused };
     if let Some(edit) = fields::test_fields_ui(ui, &mut form, &drafts.first) {
@@ -236,22 +254,26 @@ fn drawings_ui(
     });
 }
 
-/// The bars of the dial: every test that still stands and has stops, and the chosen one.
+/// The bars of the dial: the chosen test, and every test that still stands, has stops and was timed from the same clock start,
+/// since lengths of another clock are not to be compared.
 fn bars(press: &Press, rows: &[Row], chosen: usize) -> Vec<dial::Bar> {
-    rows.iter()
-        .enumerate()
-        .filter(|(index, row)| *index == chosen || !matches!(row.standing, Standing::Superseded(_)))
-        .filter_map(|(index, row)| {
+    (0..rows.len())
+        .filter(|index| is_drawn(press, rows, chosen, *index))
+        .filter_map(|index| {
             Some(dial::Bar {
-                test: index,
                 angle: press.stop_tests[index].condition.angle,
-                value: row.figures.taken?.1,
+                value: rows[index].figures.taken?.1,
                 stops: press.stop_tests[index].stops.clone(),
-                governs: row.standing == Standing::Governs,
+                governs: rows[index].standing == Standing::Governs,
                 chosen: index == chosen,
             })
         })
         .collect()
+}
+
+fn is_drawn(press: &Press, rows: &[Row], chosen: usize, index: usize) -> bool {
+    let stands = !matches!(rows[index].standing, Standing::Superseded(_));
+    index == chosen || (stands && press.stop_tests[index].clock_start == press.stop_tests[chosen].clock_start)
 }
 
 /// The allowed stopping time, where the chosen test was timed by the same clock start and stop path as the one that governs.
@@ -272,10 +294,14 @@ fn dial_words(press: &Press, shown: Option<(&Safeguard, &Assessment)>, chosen: u
     );
     if let Some((safeguard, _)) = shown {
         words.push_str(&if allowed_for(press, shown, chosen).is_some() {
-            format!(" Dashed ring: allowed for {}.", safeguard.name)
+            format!(" Dashed ring: allowed for the {}, {}.", safeguard.name, safeguard.stop_path.words())
         } else {
             " No allowed time is known for this clock start and stop path.".to_owned()
         });
+    }
+    let start = press.stop_tests[chosen].clock_start;
+    if press.stop_tests.iter().any(|test| test.clock_start != start) {
+        words.push_str(" Tests timed from another clock start are left out.");
     }
     words
 }

@@ -11,7 +11,7 @@ use calc::limits::Limit;
 use calc::refusal::Refusal;
 use calc::round::{Towards, length_digits_full, thousandths_text};
 use calc::units::{Length, LengthUnit};
-use egui::{Id, Key, Response, TextEdit, Ui, WidgetText};
+use egui::{Id, Key, Margin, Response, TextEdit, Ui, WidgetText};
 use figure::Role;
 use jiff::civil::Date;
 
@@ -22,6 +22,8 @@ use crate::window::theme;
 pub struct Drafts {
     texts: HashMap<Id, Draft>,
     focus: Option<Id>,
+    /// The latest pass in which a field of the sheet was drawn.
+    drawn: u64,
 }
 
 struct Draft {
@@ -29,6 +31,8 @@ struct Draft {
     /// The committed text that the draft began from; when it changes underneath, by undo or a paste, the draft is stale.
     began_from: String,
     refusal: Option<Refusal>,
+    /// The latest pass in which its field was drawn.
+    drawn: u64,
 }
 
 impl Drafts {
@@ -37,9 +41,13 @@ impl Drafts {
         *self = Self::default();
     }
 
-    /// Whether a field holds text that could not be taken.
-    pub fn has_refusals(&self) -> bool {
-        self.texts.values().any(|draft| draft.refusal.is_some())
+    /// What could not be taken, in words, as the sheet was last drawn. A field that is no longer there, such as one of a safeguard
+    /// that was removed, does not count.
+    pub fn refused(&self) -> Vec<String> {
+        let drawn = self.texts.values().filter(|draft| draft.drawn == self.drawn);
+        let mut words: Vec<String> = drawn.filter_map(|draft| Some(draft.refusal.as_ref()?.to_string())).collect();
+        words.sort_unstable();
+        words
     }
 
     /// Puts the cursor into a field as soon as it is drawn.
@@ -55,7 +63,19 @@ impl Drafts {
     /// Keeps text that could not be taken at a field, with the reason.
     pub fn keep_refused(&mut self, id: Id, text: String, refusal: Refusal) {
         let began_from = self.texts.get(&id).map_or(String::new(), |draft| draft.began_from.clone());
-        self.texts.insert(id, Draft { text, began_from, refusal: Some(refusal) });
+        self.texts.insert(id, Draft { text, began_from, refusal: Some(refusal), drawn: self.drawn });
+    }
+
+    fn keep(&mut self, id: Id, text: String, began_from: &str, refusal: Option<Refusal>) {
+        self.texts.insert(id, Draft { text, began_from: began_from.to_owned(), refusal, drawn: self.drawn });
+    }
+
+    /// Takes note that a field is drawn in this pass.
+    fn draw(&mut self, id: Id, pass: u64) {
+        self.drawn = pass;
+        if let Some(draft) = self.texts.get_mut(&id) {
+            draft.drawn = pass;
+        }
     }
 }
 
@@ -125,6 +145,9 @@ impl<'a> FieldKind<'a> {
     }
 }
 
+/// A field narrower than this keeps its room for digits.
+const NARROW: f32 = 60.0;
+
 /// An entry field. `committed` is the text of the stored value; `read` takes the typed text or refuses it.
 ///
 /// The identity must come from the data (tag of the press and name of the field), never from the position on the sheet.
@@ -139,6 +162,7 @@ pub fn field_ui<T>(
     if drafts.texts.get(&id).is_some_and(|draft| draft.began_from != committed) {
         drafts.texts.remove(&id);
     }
+    drafts.draw(id, ui.ctx().cumulative_pass_nr());
     let mut text = drafts.texts.get(&id).map_or_else(|| committed.to_owned(), |draft| draft.text.clone());
     let is_refused = drafts.refusal(id).is_some();
     let response = ui
@@ -148,8 +172,11 @@ pub fn field_ui<T>(
                 .id(id)
                 .desired_width(kind.width)
                 .hint_text(WidgetText::from(kind.hint).color(theme::colour(ui.ctx(), Role::Faint)));
+            if kind.width < NARROW {
+                edit = edit.margin(egui::Margin::symmetric(3, 4));
+            }
             if kind.is_figure {
-                edit = edit.align(egui::Align2::RIGHT_CENTER);
+                edit = edit.align(egui::Align2::RIGHT_CENTER).margin(figure_margin(kind.width));
             }
             if is_refused {
                 edit = edit.text_color(theme::colour(ui.ctx(), Role::Short));
@@ -193,6 +220,11 @@ pub fn field_ui<T>(
     settle(ui, id, &response, text, committed, drafts, read)
 }
 
+/// Room beside the digits; a narrow cell needs it all for them.
+fn figure_margin(width: f32) -> Margin {
+    Margin::symmetric(if width < 60.0 { 3 } else { 7 }, 2)
+}
+
 /// What typing, Enter, Tab, Escape and leaving make of the field.
 fn settle<T>(
     ui: &Ui,
@@ -205,8 +237,7 @@ fn settle<T>(
 ) -> Option<Commit<T>> {
     if !response.lost_focus() {
         if response.changed() {
-            let refusal = None;
-            drafts.texts.insert(id, Draft { text, began_from: committed.to_owned(), refusal });
+            drafts.keep(id, text, committed, None);
         }
         return None;
     }
@@ -230,7 +261,7 @@ fn settle<T>(
             Some(Commit::Set(value, moved))
         }
         Err(refusal) => {
-            drafts.texts.insert(id, Draft { text, began_from: committed.to_owned(), refusal: Some(refusal) });
+            drafts.keep(id, text, committed, Some(refusal));
             Some(Commit::Refused)
         }
     }
@@ -303,5 +334,5 @@ pub fn moment_field(
     drafts: &mut Drafts,
 ) -> Option<Commit<Moment>> {
     let committed = current.map_or(String::new(), |moment| moment.to_string());
-    field_ui(ui, id, kind.hint("2026-11-03 14:30"), &committed, drafts, |text| Moment::parse(kind.label, text))
+    field_ui(ui, id, kind.hint("year-month-day"), &committed, drafts, |text| Moment::parse(kind.label, text))
 }

@@ -15,7 +15,7 @@ use super::config;
 use super::formula::{distance, mm, over};
 
 fn demand(id: RuleSetId, case: &Case) -> Option<Demand> {
-    id.rules().distance(case, &mut WorkedSteps::new()).ok()
+    id.rules().demand(case, &mut WorkedSteps::new()).ok()
 }
 
 #[test]
@@ -45,7 +45,7 @@ fn the_derivation_ends_with_the_distance() {
     TestRunner::new(config(2_000))
         .run(&(rule_set(), case()), |(id, case)| {
             let mut steps = WorkedSteps::new();
-            if let Ok(demand) = id.rules().distance(&case, &mut steps) {
+            if let Ok(demand) = id.rules().demand(&case, &mut steps) {
                 let last = steps.iter().rev().find_map(|step| match step.value {
                     Term::Length(length) => Some(length),
                     _ => None,

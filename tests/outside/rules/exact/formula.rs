@@ -41,6 +41,13 @@ pub type Exact = (Fraction, bool);
 
 /// The distance that the rule set asks for; `None` where it asks for none.
 pub fn distance(id: RuleSetId, case: &Case) -> Option<Exact> {
+    let (distance, strict) = without_supplement(id, case)?;
+    // ISO 13855:2024 has a term for it, and its formula below holds it; every other rule set gets it added.
+    let supplement = if id == RuleSetId::Iso138552024 { whole(0) } else { mm(case.supplement) };
+    Some((distance + supplement, strict))
+}
+
+fn without_supplement(id: RuleSetId, case: &Case) -> Option<Exact> {
     let is_part_revolution = !matches!(case.clutch, Some(Clutch::FullRevolution { .. }));
     let stops = !matches!(case.kind, SafeguardKind::TwoHandTrip | SafeguardKind::GuardOpening(_));
     if stops && !is_part_revolution {

@@ -66,6 +66,7 @@ pub struct AddDraft {
     opening: String,
     shape: Shape,
     refusals: Vec<Refusal>,
+    begun_for: String,
 }
 
 #[derive(Clone, Copy, PartialEq, Default)]
@@ -76,12 +77,16 @@ enum Shape {
     Round,
 }
 
-/// Shows the form.
-pub fn add_ui(ui: &mut Ui, cx: &SheetContext, draft: &mut AddDraft, wishes: &mut Wishes) {
+/// Shows the form; whether a safeguard was added.
+pub fn add_ui(ui: &mut Ui, cx: &SheetContext, draft: &mut AddDraft, wishes: &mut Wishes) -> bool {
+    let mut is_added = false;
     card_ui(ui, |ui| {
         ui.set_width(ui.available_width());
         heading(ui, "Add a safeguard");
         let mut is_entered = false;
+        // On a press without safeguards this is what one comes for: the cursor stands in the name.
+        let begins = cx.press.safeguards.is_empty() && draft.begun_for != cx.press.tag;
+        draft.begun_for.clone_from(&cx.press.tag);
         ui.horizontal_wrapped(|ui| {
             if let Some(kind) = choice_ui(ui, Id::unique(("new kind", &cx.press.tag)), "Kind", 150.0, draft.kind) {
                 draft.kind = kind;
@@ -94,6 +99,9 @@ pub fn add_ui(ui: &mut Ui, cx: &SheetContext, draft: &mut AddDraft, wishes: &mut
                     ui.add(TextEdit::singleline(text).id(id).desired_width(width)).labelled_by(label_response.id);
                 if !unit.is_empty() {
                     caption(ui, unit);
+                }
+                if begins && label == "Name" {
+                    response.request_focus();
                 }
                 is_entered |= response.lost_focus() && ui.input(|input| input.key_pressed(Key::Enter));
             };
@@ -127,12 +135,15 @@ pub fn add_ui(ui: &mut Ui, cx: &SheetContext, draft: &mut AddDraft, wishes: &mut
                         press.safeguards.push(safeguard)
                     });
                     wishes.push(Wish::ShowSafeguard(place));
-                    *draft = AddDraft { kind: draft.kind, ..AddDraft::default() };
+                    let begun_for = cx.press.tag.clone();
+                    *draft = AddDraft { kind: draft.kind, begun_for, ..AddDraft::default() };
+                    is_added = true;
                 }
                 Err(refusals) => draft.refusals = refusals,
             }
         }
     });
+    is_added
 }
 
 /// Reads the form; all refusals at once.

@@ -32,9 +32,9 @@ pub fn time_parts_ui(ui: &mut Ui, card: &Card, drafts: &mut Drafts, wishes: &mut
     let governing = card.assessment().governing;
     match governing.and_then(|governing| card.cx.press.stop_tests.get(governing.test)) {
         Some(test) => {
-            caption(ui, format!("The clock of the deciding test started when: {}.", test.clock_start.words()))
+            caption(ui, format!("The clock of the governing test started when: {}.", test.clock_start.words()))
         }
-        None => caption(ui, "No stop test decides yet."),
+        None => caption(ui, "No stop test governs yet."),
     };
     let parts = &card.assessment().parts;
     let state = |kind| parts.iter().find(|part| part.kind == kind).map(|part| part.state);

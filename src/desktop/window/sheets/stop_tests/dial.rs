@@ -12,8 +12,6 @@ use super::ink::Ink;
 /// One test on the dial.
 #[derive(Clone, PartialEq, Debug)]
 pub struct Bar {
-    /// Its place in the press's list.
-    pub test: usize,
     /// Crank angle of the stop command.
     pub angle: Angle,
     /// The value taken forward.
@@ -60,7 +58,7 @@ pub fn dial_ui(ui: &mut egui::Ui, size: f32, bars: &[Bar], allowed: Option<Time>
     let words = spoken(bars, allowed);
     response.widget_info(|| egui::WidgetInfo::labeled(egui::Role::Image, true, words.clone()));
     let painter = ui.painter_at(rect);
-    let (centre, outer) = (rect.center(), size / 2.0 - 22.0);
+    let (centre, outer) = (rect.center(), size / 2.0 - 36.0);
     let longest = bars.iter().map(|bar| bar.value).chain(allowed).max().unwrap_or(Time::ms(100));
     let step = ring_step(longest);
     let rings = longest.base() / step.base() + 1;
@@ -121,16 +119,7 @@ fn draw_angles(painter: &egui::Painter, centre: Pos2, outer: f32, ink: &Ink) {
     for (angle, anchor) in
         [(0, Align2::CENTER_BOTTOM), (90, Align2::LEFT_CENTER), (180, Align2::CENTER_TOP), (270, Align2::RIGHT_CENTER)]
     {
-        let at = centre + direction(Angle::deg(angle)) * (outer + 7.0);
-        let (angle, anchor) = match angle {
-            90 | 270 => (angle, if angle == 90 { Align2::RIGHT_BOTTOM } else { Align2::LEFT_BOTTOM }),
-            _ => (angle, anchor),
-        };
-        let at = match angle {
-            90 => at + vec2(15.0, -2.0),
-            270 => at + vec2(-15.0, -2.0),
-            _ => at,
-        };
+        let at = centre + direction(Angle::deg(angle)) * (outer + 9.0);
         painter.text(at, anchor, format!("{angle}°"), font.clone(), ink.text);
     }
     draw_running_direction(painter, centre, ink);
@@ -206,14 +195,7 @@ mod tests {
     use super::*;
 
     fn bar(angle: i64) -> Bar {
-        Bar {
-            test: 0,
-            angle: Angle::deg(angle),
-            value: Time::ms(180),
-            stops: Vec::new(),
-            governs: false,
-            chosen: false,
-        }
+        Bar { angle: Angle::deg(angle), value: Time::ms(180), stops: Vec::new(), governs: false, chosen: false }
     }
 
     #[test]

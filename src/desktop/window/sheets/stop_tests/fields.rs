@@ -73,7 +73,7 @@ fn timing_ui(ui: &mut egui::Ui, form: &mut Form<'_>, test: &PartialTest) -> Opti
     let mut put = |found: Option<Edit>| edit = edit.take().or(found);
     heading(ui, "Timing");
     let at = test.at.map_or_else(String::new, |at| at.to_string());
-    let kind = FieldKind::words("Date, time").wide(130.0).hint("2026-11-03 14:30");
+    let kind = FieldKind::words("Date, time").wide(148.0).hint("year-month-day");
     put(form.needed(ui, "at", kind, &at, |text| Moment::parse("Date", text)).map(Edit::At));
     put(form.words(ui, "by", "Timed by", &test.by).map(Edit::By));
     let starts = (test.clock_start, ClockStart::ALL);
@@ -87,7 +87,7 @@ fn timing_ui(ui: &mut egui::Ui, form: &mut Form<'_>, test: &PartialTest) -> Opti
     put(form.words(ui, "instrument", "Instrument", &test.instrument).map(Edit::Instrument));
     put(form.words(ui, "serial", "Serial number", &test.serial).map(Edit::Serial));
     let day = |date: Option<jiff::civil::Date>| date.map_or_else(String::new, |date| date.to_string());
-    let kind = |label| FieldKind::words(label).wide(130.0).hint("2026-11-03");
+    let kind = |label| FieldKind::words(label).wide(148.0).hint("year-month-day");
     put(form
         .optional(ui, "calibrated", kind("Calibrated on"), &day(test.calibrated), |text| {
             parse_date("Calibrated on", text)

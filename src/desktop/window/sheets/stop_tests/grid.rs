@@ -5,7 +5,7 @@ use calc::press::Press;
 use calc::refusal::Refusal;
 use calc::round::Towards;
 use calc::units::Time;
-use egui::{Align, Event, Id, Key, Layout, Rect, RichText, Sense, Stroke, UiBuilder, pos2, vec2};
+use egui::{Align, Event, FontId, Id, Key, Layout, Rect, RichText, Sense, Stroke, UiBuilder, pos2, vec2};
 use figure::Role;
 
 use super::model::{Figures, MOST_STOPS, Row, Standing, column_figure};
@@ -20,6 +20,8 @@ use crate::window::wishes::Wishes;
 pub struct GridDrafts {
     /// The chosen test.
     pub chosen: usize,
+    /// The test to choose as soon as it is there.
+    pending: Option<usize>,
     /// The cells.
     cells: Drafts,
     /// Why the last block was not taken.
@@ -29,14 +31,28 @@ pub struct GridDrafts {
 impl GridDrafts {
     /// Chooses a test and puts the keyboard into its first empty cell.
     pub fn begin(&mut self, press: &Press, test: usize, stops: usize) {
-        self.chosen = test;
+        self.pending = Some(test);
+        self.block.clear();
         self.cells.focus(cell_id(press, (test, stops)));
+    }
+
+    /// Chooses what was wished, and never a test that is not there.
+    pub fn follow(&mut self, tests: usize) {
+        if let Some(test) = self.pending.take_if(|test| *test < tests) {
+            self.chosen = test;
+        }
+        self.chosen = self.chosen.min(tests.saturating_sub(1));
     }
 
     /// Forgets everything typed, as when tests have moved up.
     pub fn clear(&mut self) {
         self.cells.clear();
         self.block.clear();
+    }
+
+    /// What could not be taken in the cells, in words.
+    pub fn refused_cells(&self) -> Vec<String> {
+        self.cells.refused()
     }
 
     /// Every refusal in the cells of the chosen test, each with the stop that it is about.
@@ -52,9 +68,10 @@ impl GridDrafts {
 }
 
 const ACROSS: usize = 10;
-const LINE: f32 = 27.0;
-const HEAD: f32 = 40.0;
-const LEAST_ROW: f32 = 58.0;
+const LINE: f32 = 29.0;
+const HEAD: f32 = 58.0;
+// Room for two lines of stops, so that no row grows when the tenth stop is entered.
+const LEAST_ROW: f32 = 2.0 * LINE + 12.0;
 
 /// Width of each part of a row.
 #[derive(Clone, Copy)]
@@ -80,7 +97,7 @@ pub const LEAST_WIDTH: f32 = 1016.0;
 impl Widths {
     fn within(available: f32) -> Self {
         let spare = (available - LEAST_WIDTH).clamp(0.0, 160.0);
-        Self { title: 214.0 + spare * 0.4, cell: 42.0 + (spare * 0.06).floor(), gap: 14.0 }
+        Self { title: 194.0 + spare * 0.4, cell: 44.0 + (spare * 0.06).floor(), gap: 14.0 }
     }
 
     fn stops_from(self, left: f32) -> f32 {
@@ -102,7 +119,11 @@ pub fn grid_ui(ui: &mut egui::Ui, press: &Press, rows: &[Row], drafts: &mut Grid
         ui.spacing_mut().item_spacing.y = 0.0;
         let widths = Widths::within(ui.available_width());
         head_ui(ui, widths);
-        for (index, row) in rows.iter().enumerate() {
+        // What counts stands above what has been superseded; within each the order of entry is kept, so that no row jumps while
+        // its stops are typed.
+        let is_superseded = |row: &Row| matches!(row.standing, Standing::Superseded(_));
+        let (superseded, counting): (Vec<_>, Vec<_>) = rows.iter().enumerate().partition(|(_, row)| is_superseded(row));
+        for (index, row) in counting.into_iter().chain(superseded) {
             row_ui(ui, widths, press, index, row, drafts, wishes);
         }
     });
@@ -112,17 +133,23 @@ fn head_ui(ui: &mut egui::Ui, widths: Widths) {
     let (rect, _) = ui.allocate_exact_size(vec2(widths.total(), HEAD), Sense::hover());
     let bottom =
         |from: f32, width: f32| Rect::from_min_max(pos2(from, rect.top()), pos2(from + width, rect.bottom() - 5.0));
+    let put_above = |ui: &egui::Ui, from: f32, text: &str| {
+        let font = FontId::proportional(12.0);
+        let at = pos2(from, rect.top() + 2.0);
+        ui.painter().text(at, egui::Align2::LEFT_TOP, text, font, theme::colour(ui.ctx(), Role::Faint));
+    };
+    put_above(ui, widths.stops_from(rect.left()) + 6.0, "Stops, ms");
+    put_above(ui, widths.figures_from(rect.left()) + FIGURES[0].1 + 6.0, "Figures, ms");
     let mut put = |from: f32, width: f32, text: &str, align: Align| {
         let layout = Layout::bottom_up(align);
-        ui.scope_builder(UiBuilder::new().max_rect(bottom(from, width)).layout(layout), |ui| {
+        within(ui, UiBuilder::new().max_rect(bottom(from, width)).layout(layout), |ui| {
             ui.add(egui::Label::new(RichText::new(text).small().weak()).halign(align));
         });
     };
     put(rect.left() + 12.0, widths.title, "Condition", Align::Min);
     let stops = widths.stops_from(rect.left());
     for cell in 0..ACROSS {
-        let text = if cell == 0 { "ms   1".to_owned() } else { (cell + 1).to_string() };
-        put(stops + cell as f32 * widths.cell, widths.cell - 8.0, &text, Align::Max);
+        put(stops + cell as f32 * widths.cell, widths.cell - 8.0, &(cell + 1).to_string(), Align::Max);
     }
     let mut from = widths.figures_from(rect.left());
     for (name, width) in FIGURES {
@@ -132,7 +159,6 @@ fn head_ui(ui: &mut egui::Ui, widths: Widths) {
     ui.painter().hline(rect.x_range(), rect.bottom(), Stroke::new(1.0, ui.visuals().weak_text_color()));
 }
 
-#[allow(clippy::too_many_arguments)]
 fn row_ui(
     ui: &mut egui::Ui,
     widths: Widths,
@@ -157,7 +183,7 @@ fn row_ui(
     let cell_rect = |cell: usize| {
         let corner = pos2(
             widths.stops_from(rect.left()) + (cell % ACROSS) as f32 * widths.cell,
-            rect.top() + 6.0 + (cell / ACROSS) as f32 * LINE,
+            rect.top() + 7.0 + (cell / ACROSS) as f32 * LINE,
         );
         Rect::from_min_size(corner, vec2(widths.cell - 3.0, LINE - 3.0))
     };
@@ -190,7 +216,6 @@ fn cell_id(press: &Press, (test, cell): (usize, usize)) -> Id {
 }
 
 /// The condition, which is also the button that chooses the row. Tells whether it was pressed.
-#[allow(clippy::too_many_arguments)]
 fn title_ui(
     ui: &mut egui::Ui,
     row_rect: Rect,
@@ -202,7 +227,7 @@ fn title_ui(
 ) -> bool {
     let rect = Rect::from_min_size(row_rect.min, vec2(widths.title, row_rect.height()));
     let response = ui.interact(rect, row_id(press, index), Sense::click());
-    let standing = standing_words(&row.standing);
+    let standing = format!("{}, {}", row.day, standing_words(&row.standing));
     let spoken = format!("{}, {}, {standing}", row.title, row.detail);
     response.widget_info(|| egui::WidgetInfo::selected(egui::Role::RadioButton, true, is_chosen, spoken.clone()));
     let visuals = ui.visuals();
@@ -223,15 +248,21 @@ fn title_ui(
     } else if response.hovered() {
         painter.rect_filled(rect.shrink(1.0), 2.0, visuals.widgets.hovered.weak_bg_fill.gamma_multiply(0.5));
     }
-    let inner = Rect::from_min_max(rect.min + vec2(12.0, 6.0), rect.max - vec2(4.0, 2.0));
-    ui.scope_builder(UiBuilder::new().max_rect(inner).layout(Layout::top_down(Align::Min)), |ui| {
+    let inner = Rect::from_min_max(rect.min + vec2(12.0, 8.0), rect.max - vec2(4.0, 2.0));
+    within(ui, UiBuilder::new().max_rect(inner).layout(Layout::top_down(Align::Min)), |ui| {
         ui.spacing_mut().item_spacing.y = 1.0;
-        let title = RichText::new(&row.title).color(title_colour);
-        ui.add(egui::Label::new(if governs { title.strong() } else { title }).truncate().selectable(false));
-        ui.add(egui::Label::new(RichText::new(&row.detail).small().color(weak)).truncate().selectable(false));
-        let standing_colour = if governs { theme::colour(ui.ctx(), Role::Accent) } else { weak };
-        let standing = RichText::new(&standing).small().color(standing_colour);
-        ui.add(egui::Label::new(if governs { standing.strong() } else { standing }).truncate().selectable(false));
+        let line = |ui: &mut egui::Ui, text: &str, font: FontId, colour| {
+            ui.add(egui::Label::new(RichText::new(text).font(font).color(colour)).truncate().selectable(false));
+        };
+        let accent = theme::colour(ui.ctx(), Role::Accent);
+        let fonts = if governs {
+            (theme::strong(14.0), theme::strong(12.0), accent)
+        } else {
+            (FontId::proportional(14.0), FontId::proportional(12.0), weak)
+        };
+        line(ui, &row.title, fonts.0, title_colour);
+        line(ui, &row.detail, FontId::proportional(12.0), weak);
+        line(ui, &standing, fonts.1, fonts.2);
     });
     response.clicked()
 }
@@ -240,8 +271,8 @@ fn title_ui(
 pub fn standing_words(standing: &Standing) -> String {
     match standing {
         Standing::Governs => "governs".into(),
-        Standing::Counts => "counts, does not govern".into(),
-        Standing::OtherPath => "not the stop this safeguard calls for".into(),
+        Standing::Counts => "counts".into(),
+        Standing::OtherPath => "other stop path".into(),
         Standing::Superseded(why) => why.clone(),
     }
 }
@@ -255,7 +286,7 @@ fn figures_ui(ui: &mut egui::Ui, row_rect: Rect, widths: Widths, row: &Row) {
     let is_faint = matches!(row.standing, Standing::Superseded(_));
     let mut from = widths.figures_from(row_rect.left());
     for ((text, (_, width)), place) in texts.iter().zip(FIGURES).zip(0..) {
-        let rect = Rect::from_min_size(pos2(from, row_rect.top() + 6.0), vec2(width - 4.0, LINE - 3.0));
+        let rect = Rect::from_min_size(pos2(from, row_rect.top() + 7.0), vec2(width - 4.0, LINE - 3.0));
         figure_ui(ui, rect, text, is_faint, place == 6 && row.standing == Standing::Governs);
         from += width;
     }
@@ -267,12 +298,17 @@ fn figure_ui(ui: &mut egui::Ui, rect: Rect, text: &str, is_faint: bool, is_stron
         text = text.weak();
     }
     if is_strong {
-        text = text.strong();
+        text = text.font(theme::strong(14.0));
     }
     let layout = Layout::right_to_left(Align::Center);
-    ui.scope_builder(UiBuilder::new().max_rect(rect).layout(layout), |ui| {
+    within(ui, UiBuilder::new().max_rect(rect).layout(layout), |ui| {
         ui.add(egui::Label::new(text).selectable(false).extend());
     });
+}
+
+/// Draws inside a row whose room is already taken, so that the place of what follows does not change.
+fn within<R>(ui: &mut egui::Ui, builder: UiBuilder, content: impl FnOnce(&mut egui::Ui) -> R) -> R {
+    content(&mut ui.new_child(builder))
 }
 
 /// One stop of the chosen row.
@@ -293,11 +329,11 @@ fn cell_ui(
     let taken = press.stop_tests[test].stops.get(cell).map_or_else(String::new, |stop| stop.digits());
     let kind = FieldKind::figure(&label, STOPPING_TIME.unit).wide(rect.width()).bare();
     let layout = Layout::left_to_right(Align::Center);
-    let commit = ui
-        .scope_builder(UiBuilder::new().max_rect(rect).layout(layout), |ui| {
-            field_ui(ui, id, FieldKind { unit: "", ..kind }, &taken, &mut drafts.cells, read_cell)
-        })
-        .inner;
+    let commit = within(ui, UiBuilder::new().max_rect(rect).layout(layout), |ui| {
+        // The margin of a whole form would leave no room for the figures.
+        ui.spacing_mut().button_padding.x = 4.0;
+        field_ui(ui, id, FieldKind { unit: "", ..kind }, &taken, &mut drafts.cells, read_cell)
+    });
     let next = cell_id(press, (test, (cell + 1).min(MOST_STOPS - 1)));
     match commit {
         Some(Commit::Set(Typed::Stop(stop), moved)) => {
@@ -343,7 +379,9 @@ fn take_block(press: &Press, (test, cell): (usize, usize), text: &str, drafts: &
             set_stops(press, (test, cell), stops, label, wishes);
         }
         Err(refused) => {
-            drafts.block = std::iter::once("Nothing was pasted.".to_owned()).chain(refused).collect();
+            let counted =
+                if refused.len() == 1 { "1 refusal".to_owned() } else { format!("{} refusals", refused.len()) };
+            drafts.block = std::iter::once(format!("Nothing was pasted, {counted}.")).chain(refused).collect();
         }
     }
 }

@@ -4,7 +4,7 @@ use calc::in_force::tests_in_force;
 use calc::plant_settings::PlantSettings;
 use calc::press::Press;
 use calc::round::{Towards, time_text};
-use calc::stop_test::{ClockStart, Condition, Instrument, StopPath, StopTest};
+use calc::stop_test::{ClockStart, Condition, StopPath, StopTest, Valves};
 use calc::units::Time;
 use calc::value_taken::{ValueTaken, summary_ms};
 use calc::verdict::Assessment;
@@ -15,10 +15,12 @@ pub const MOST_STOPS: usize = 200;
 /// One row of the grid.
 #[derive(Clone, PartialEq, Debug)]
 pub struct Row {
-    /// The condition in one line: "90°, 60 strokes/min, 450 kg die".
+    /// What is set at the press: "90°, 60 strokes/min".
     pub title: String,
-    /// The rest of the condition, the day, and why the test does not count where it does not.
+    /// The rest of the condition.
     pub detail: String,
+    /// The day.
+    pub day: String,
     /// Whether it counts.
     pub standing: Standing,
     /// The figures of its stops.
@@ -96,23 +98,21 @@ pub fn rows(press: &Press, settings: &PlantSettings, shown: Option<(StopPath, &A
             if let Some(governing) = governing.filter(|governing| governing.test == index) {
                 figures.taken = Some((governing.taken, governing.value));
             }
-            Row { title: title(&test.condition), detail: detail(test), standing, figures }
+            let day = test.at.date.to_string();
+            Row { title: title(&test.condition), detail: detail(&test.condition), day, standing, figures }
         })
         .collect()
 }
 
 /// The first half of a condition: what is set at the press.
 pub fn title(condition: &Condition) -> String {
-    format!("{}°, {}, {} die", condition.angle.digits(), condition.speed, condition.upper_die)
+    let valves =
+        if condition.valves == Valves::Both { String::new() } else { format!(", {}", condition.valves.words()) };
+    format!("{}°, {}{valves}", condition.angle.digits(), condition.speed)
 }
 
-fn detail(test: &StopTest) -> String {
-    let condition = &test.condition;
-    let mut words = format!("{}, {} brake, {}", test.at.date, condition.brake.words(), condition.path.words());
-    if condition.valves != calc::stop_test::Valves::Both {
-        words = format!("{words}, {}", condition.valves.words());
-    }
-    words
+fn detail(condition: &Condition) -> String {
+    format!("{} die, {}, {}", condition.upper_die, condition.brake.words(), condition.path.words())
 }
 
 fn standings(press: &Press, path: Option<StopPath>, governing: Option<usize>) -> Vec<Standing> {
@@ -138,11 +138,11 @@ fn why_superseded(press: &Press, index: usize, in_force: &[usize]) -> String {
     let test = &press.stop_tests[index];
     let same = in_force.iter().map(|other| &press.stop_tests[*other]).find(|other| other.condition == test.condition);
     if let Some(later) = same {
-        return format!("replaced by the test of {}", later.at);
+        return format!("replaced {}", later.at.date);
     }
     let resets = press.events.iter().filter(|event| event.kind.resets_brake() && !test.at.is_surely_after(event.at));
     match resets.reduce(|one, other| if one.at.is_surely_after(other.at) { one } else { other }) {
-        Some(event) => format!("timed before: {} on {}", event.kind.words(), event.at.date),
+        Some(event) => format!("before {} on {}", event.kind.words(), event.at.date),
         None => "no longer in force".into(),
     }
 }
@@ -167,11 +167,6 @@ pub fn clock_words(clock_start: ClockStart) -> &'static str {
         ClockStart::ControlInput => "The clock saw control and brake. Device and interface are added.",
         ClockStart::ValveCurrent => "The clock saw the brake alone. Device, interface and control are added.",
     }
-}
-
-/// Whether nothing at all is said of an instrument.
-pub fn is_unnamed(instrument: &Instrument) -> bool {
-    instrument.name.trim().is_empty() && instrument.serial.trim().is_empty()
 }
 
 /// A time for a column of figures: one decimal always, without the unit.
@@ -240,7 +235,7 @@ mod tests {
         let found = |press: &Press| standings(press, Some(StopPath::Normal), Some(1));
         assert_eq!(
             found(&press),
-            [Standing::Superseded("replaced by the test of 2026-11-20".into()), Standing::Governs, Standing::Counts]
+            [Standing::Superseded("replaced 2026-11-20".into()), Standing::Governs, Standing::Counts]
         );
         press.stop_tests.push(stop_test("2026-11-25", 180, &[150; 10]));
         press.events.push(Event {
@@ -249,7 +244,7 @@ mod tests {
             safeguard: None,
             note: String::new(),
         });
-        let before = || Standing::Superseded("timed before: lining replaced on 2026-11-22".into());
+        let before = || Standing::Superseded("before lining replaced on 2026-11-22".into());
         assert_eq!(found(&press)[1..], [before(), before(), Standing::Counts]);
     }
 

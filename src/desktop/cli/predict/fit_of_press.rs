@@ -1,48 +1,29 @@
-//! `slidehalt fit`: delay and torque of the brake from the stop tests of a press.
+//! The fit of a press that knows its own drive and brake: delay and torque, residuals, and later tests beside what was predicted.
 
 use calc::motion::{Estimate, Unknowns};
-use calc::prediction::{FitDeclined, LaterTest, LeftOut, PathFit, compare_later_tests, fit_path};
+use calc::prediction::{LaterTest, LeftOut, PathFit, compare_later_tests, fit_path};
 use calc::press::Press;
-use calc::stop_test::StopPath;
 use calc::value_taken::summary_ms;
 use serde_json::{Value, json};
 
-use super::Outcome;
-use super::motion_args::{FitArgs, PathArg};
-use super::outcome::columns;
+use super::super::Outcome;
+use super::super::args::FitArgs;
+use super::super::outcome::columns;
+use super::CAUTION;
+use super::read::path;
 
-pub fn fit(args: &FitArgs) -> Outcome {
+pub fn fit_of_press(press: &Press, args: &FitArgs) -> Outcome {
     let mut outcome = Outcome::default();
-    let press = match plant::open_press_file(&args.press) {
-        Ok((_, press)) => press,
-        Err(refusal) => {
-            outcome.refuse(refusal.to_string());
-            return outcome;
-        }
-    };
-    let path = match args.path {
-        PathArg::Normal => StopPath::Normal,
-        PathArg::Emergency => StopPath::Emergency,
-    };
     let unknowns = if args.friction { Unknowns::DelayTorqueAndFriction } else { Unknowns::DelayAndTorque };
-    match fit_path(&press, path, unknowns) {
+    match fit_path(press, path(&args.drive), unknowns) {
         Ok(found) if args.json => {
-            let value = as_json(&press, &found);
+            let value = as_json(press, &found);
             outcome.line(serde_json::to_string_pretty(&value).unwrap_or_default());
         }
-        Ok(found) => tell(&press, &found, &mut outcome),
-        Err(declined) => decline(args, &declined, &mut outcome),
+        Ok(found) => tell(press, &found, &mut outcome),
+        Err(declined) => outcome.refuse(declined.to_string()),
     }
     outcome
-}
-
-fn decline(args: &FitArgs, declined: &FitDeclined, outcome: &mut Outcome) {
-    if args.json {
-        let value =
-            json!({ "fitted": false, "reason": declined.to_string(), "left_out": left_out(&declined.left_out) });
-        outcome.line(serde_json::to_string_pretty(&value).unwrap_or_default());
-    }
-    outcome.refuse(declined.to_string());
 }
 
 fn left_out(left_out: &[LeftOut]) -> Vec<Value> {
@@ -50,8 +31,6 @@ fn left_out(left_out: &[LeftOut]) -> Vec<Value> {
 }
 
 fn as_json(press: &Press, fit: &PathFit) -> Value {
-    let estimate =
-        |of: Estimate, scale: f64| json!({ "value": of.value * scale, "low": of.low * scale, "high": of.high * scale });
     let fitted = &fit.fitted;
     let tests: Vec<Value> = fit
         .used
@@ -75,23 +54,25 @@ fn as_json(press: &Press, fit: &PathFit) -> Value {
             json!({
                 "test": later.test + 1,
                 "earlier_tests": later.earlier,
-                "predicted_ms": estimate(later.predicted_ms, 1.0),
+                "predicted_ms": later.predicted_ms.value,
+                "predicted_interval_ms": [later.predicted_ms.low, later.predicted_ms.high],
                 "measured_ms": later.measured_ms,
                 "within": later.is_within(),
             })
         })
         .collect();
     json!({
-        "fitted": true,
         "press": press.tag,
         "path": fit.path.key(),
         "clock_start": fit.clock_start.key(),
-        "delay_ms": estimate(fitted.dead_time_s, 1e3),
-        "torque_nm": estimate(fitted.full_torque_nm, 1.0),
-        "friction_nm": fitted.friction_torque_nm.map(|friction| estimate(friction, 1.0)),
+        "delay_ms": fitted.dead_time_s.value * 1e3,
+        "delay_interval_ms": [fitted.dead_time_s.low * 1e3, fitted.dead_time_s.high * 1e3],
+        "torque_nm": fitted.full_torque_nm.value,
+        "torque_interval_nm": [fitted.full_torque_nm.low, fitted.full_torque_nm.high],
+        "friction_nm": fitted.friction_torque_nm.map(|friction| friction.value),
         "chi_squared": fitted.chi_squared,
         "lack_of_fit": fitted.lack_of_fit,
-        "tests": tests,
+        "conditions": tests,
         "left_out": left_out(&fit.left_out),
         "later_tests": later,
     })
@@ -140,6 +121,7 @@ fn tell(press: &Press, fit: &PathFit, outcome: &mut Outcome) {
     for later in compare_later_tests(press, fit.path) {
         outcome.line(later_words(&later));
     }
+    outcome.line(CAUTION);
 }
 
 fn later_words(later: &LaterTest) -> String {
