@@ -18,7 +18,7 @@ use calc::units::{Angle, Mass, Rate};
 use egui::{Id, RichText, Ui, vec2};
 use figure::Role;
 
-use super::form::{Form, fill_strip, keep_strip};
+use super::form::{Form, ROW, fill_strip, keep_strip};
 use crate::window::context::SheetContext;
 use crate::window::theme;
 use crate::window::widgets::{Drafts, caption, segments_ui};
@@ -80,10 +80,23 @@ pub fn prediction_ui(ui: &mut Ui, cx: &SheetContext, drafts: &mut PredictionDraf
     let first = if known.stop.is_ok() { Part::Stop } else { Part::Data };
     let mut shown = part.unwrap_or(first);
     ui.push_id((cx.press.tag.as_str(), "prediction"), |ui| {
-        if let Some(other) = segments_ui(ui, "", shown, PARTS) {
-            shown = other;
-            *part = Some(other);
-        }
+        ui.horizontal_wrapped(|ui| {
+            if let Some(other) = segments_ui(ui, "", shown, PARTS) {
+                shown = other;
+                *part = Some(other);
+            }
+            if shown != Part::Data {
+                ui.separator();
+                path_ui(ui, wanted);
+            }
+            if shown != Part::Data && shown != Part::Fit && known.fit.is_ok() {
+                ui.separator();
+                let choices = [(true, "fitted"), (false, "as entered")];
+                if let Some(by_fit) = segments_ui(ui, "Brake", wanted.by_fit, &choices) {
+                    wanted.by_fit = by_fit;
+                }
+            }
+        });
         let owner = Id::unique((cx.press.tag.as_str(), "prediction-fields"));
         let mut refused = Vec::new();
         let mut form = Form { owner, drafts: fields, label: LABEL, field: FIELD, refused: &mut refused };
@@ -102,8 +115,6 @@ pub fn prediction_ui(ui: &mut Ui, cx: &SheetContext, drafts: &mut PredictionDraf
         }
         if shown != Part::Fit {
             condition_ui(ui, &mut form, wanted, known);
-        } else {
-            path_ui(ui, wanted);
         }
         match (shown, &known.stop) {
             (Part::Fit, _) => fit_view::fit_ui(ui, cx, known, wishes),
@@ -115,8 +126,9 @@ pub fn prediction_ui(ui: &mut Ui, cx: &SheetContext, drafts: &mut PredictionDraf
             (Part::WhatIf, Ok(stop)) => what_if::what_if_ui(ui, cx, &mut form, stop, known, wanted, what_if),
             (_, Ok(stop)) => {
                 headline_ui(ui, stop, wanted);
+                distances::distances_ui(ui, cx, &stop.distances);
                 curves::curves_ui(ui, &cx.press.tag, stop, curve);
-                distances::distances_ui(ui, cx, &stop.distances, "predicted stop");
+                distances::steps_ui(ui, cx, &stop.distances, "predicted stop");
             }
         }
         for words in &refused {
@@ -131,6 +143,11 @@ fn group_ui(ui: &mut Ui, content: impl FnOnce(&mut Ui)) {
         ui.spacing_mut().item_spacing = vec2(8.0, 2.0);
         content(ui);
     });
+}
+
+/// How high a picture may be that shall be seen whole, with `under` points left below it.
+fn height_left(ui: &Ui, under: f32, least: f32, most: f32) -> f32 {
+    (ui.clip_rect().bottom() - ui.cursor().top() - under).clamp(least, most)
 }
 
 /// A sentence in the colour of Unproven, with its hollow square.
@@ -148,25 +165,16 @@ fn edit(wishes: &mut Wishes, press: &Press, label: &'static str, change: impl Fn
 
 fn path_ui(ui: &mut Ui, wanted: &mut Wanted) {
     let paths = StopPath::ALL.iter().map(|path| (*path, path.words())).collect::<Vec<_>>();
-    if let Some(path) = segments_ui(ui, "Stop path", wanted.path, &paths) {
+    if let Some(path) = segments_ui(ui, "", wanted.path, &paths) {
         wanted.path = path;
     }
 }
 
 /// The condition in one row.
 fn condition_ui(ui: &mut Ui, form: &mut Form<'_>, wanted: &mut Wanted, known: &Known) {
-    ui.horizontal_wrapped(|ui| {
-        ui.spacing_mut().item_spacing.x = 14.0;
-        path_ui(ui, wanted);
-        if known.fit.is_ok() {
-            let choices = [(true, "from the fit"), (false, "as entered")];
-            if let Some(by_fit) = segments_ui(ui, "Brake", wanted.by_fit, &choices) {
-                wanted.by_fit = by_fit;
-            }
-        }
-    });
     let label = std::mem::replace(&mut form.label, 84.0);
-    ui.horizontal_wrapped(|ui| {
+    ui.horizontal(|ui| {
+        ui.set_min_height(ROW);
         let angle = wanted.angle.map(Angle::base);
         if let Some(angle) = form.number(ui, "angle", "Crank angle", &limits::ANGLE, angle) {
             wanted.angle = angle.map(Angle::from_base);

@@ -1,10 +1,11 @@
 //! The predicted stop over time: one curve at a time, with the spans of the stop marked.
 
 use calc::motion::CurvePoint;
-use egui::Ui;
-use egui_plot::{HoverPosition, Line, LineStyle, Plot, PlotPoints, VLine};
+use egui::{Align2, RichText, Ui};
+use egui_plot::{HoverPosition, Line, LineStyle, Plot, PlotPoint, PlotPoints, Text, VLine};
 use figure::Role;
 
+use super::height_left;
 use super::state::PredictedStop;
 use crate::window::theme;
 use crate::window::widgets::segments_ui;
@@ -75,13 +76,27 @@ pub fn curves_ui(ui: &mut Ui, tag: &str, stop: &PredictedStop, curve: &mut Curve
         ("brake built up", spans.delay_s + spans.clutch_release_s + spans.build_up_s),
     ];
     Plot::new(("stop curve", tag, shown.unit()))
-        .height(210.0)
+        .height(height_left(ui, 8.0, 160.0, 300.0))
         .allow_scroll(false)
         .allow_drag(false)
         .allow_zoom(false)
-        .show_grid([true, true])
+        .show_grid([false, true])
+        .x_grid_spacer(egui_plot::uniform_grid_spacer(|input| {
+            // About one labelled step for every eighth of the width.
+            let wide = input.bounds.1 - input.bounds.0;
+            let step = [5.0, 10.0, 20.0, 50.0, 100.0, 200.0, 500.0]
+                .into_iter()
+                .find(|step| wide / step <= 12.0)
+                .unwrap_or(1000.0);
+            [step, step * 5.0, step * 10.0]
+        }))
+        .grid_spacing(egui::Rangef::new(4.0, 60.0))
         .x_axis_formatter(|mark, _| format!("{} ms", mark.value))
-        .y_axis_formatter(move |mark, _| format!("{} {}", mark.value, shown.unit()))
+        .y_axis_formatter(move |mark, _| {
+            // Nothing is negative here but slide speed and travel; a label below 0 would read as if it could be.
+            let is_shown = 0.0 <= mark.value || matches!(shown, Curve::SlideSpeed | Curve::Travel);
+            if is_shown { format!("{} {}", mark.value, shown.unit()).replace('-', "\u{2212}") } else { String::new() }
+        })
         .label_formatter(move |hover| match hover {
             HoverPosition::NearDataPoint { position, .. } => {
                 Some(format!("{:.1} ms\n{:.1} {}", position.x, position.y, shown.unit()))
@@ -97,6 +112,9 @@ pub fn curves_ui(ui: &mut Ui, tag: &str, stop: &PredictedStop, curve: &mut Curve
                     let line =
                         VLine::new(what, at_s * 1e3).color(colour(Role::Hatching)).style(LineStyle::dashed_dense());
                     plot.vline(line);
+                    let label = RichText::new(what).size(11.5).color(colour(Role::Faint));
+                    let at = PlotPoint::new(at_s * 1e3, plot.plot_bounds().min()[1]);
+                    plot.text(Text::new(what, at, label).anchor(Align2::LEFT_BOTTOM));
                     before = at_s;
                 }
             }

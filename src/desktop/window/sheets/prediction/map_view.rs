@@ -10,9 +10,9 @@ use figure::Role;
 
 use super::map_job::{ANGLES, MapDone, MapJob, MapOf, SPEEDS, share, time_ms};
 use super::state::{PredictedStop, Wanted};
-use super::unproven_ui;
+use super::{height_left, unproven_ui};
 use crate::window::context::SheetContext;
-use crate::window::sheets::form::Form;
+use crate::window::sheets::form::{Form, ROW};
 use crate::window::theme;
 use crate::window::widgets::caption;
 
@@ -81,6 +81,7 @@ fn speeds_ui(
     let (mut from, mut to) = job.speeds.or(of_press)?;
     let label = std::mem::replace(&mut form.label, 84.0);
     ui.horizontal(|ui| {
+        ui.set_min_height(ROW);
         if let Some(count) = form.needed_number(ui, "map-from", "Speeds from", &limits::SPEED, Some(from)) {
             from = count;
             job.speeds = Some((from, to));
@@ -121,7 +122,6 @@ fn worst_ui(ui: &mut Ui, done: &MapDone) {
 const LEFT: f32 = 46.0;
 const RIGHT: f32 = 96.0;
 const UNDER: f32 = 40.0;
-const HEIGHT: f32 = 300.0;
 
 fn picture_ui(
     ui: &mut Ui,
@@ -131,7 +131,7 @@ fn picture_ui(
     wanted: &Wanted,
     cell: &mut Option<(usize, usize)>,
 ) {
-    let size = vec2(ui.available_width().min(980.0), HEIGHT);
+    let size = vec2(ui.available_width().min(1100.0), height_left(ui, 52.0, 230.0, 460.0));
     let (rect, response) = ui.allocate_exact_size(size, Sense::click());
     let plot = Rect::from_min_max(rect.min + vec2(LEFT, 8.0), rect.max - vec2(RIGHT, UNDER));
     keys(ui, &response, cell);

@@ -8,7 +8,7 @@ use calc::motion::{
 use egui::{Grid, Id, RichText, Ui, vec2};
 use figure::Role;
 
-use super::distances::distances_ui;
+use super::distances::{distances_ui, steps_ui};
 use super::state::{Known, PredictedStop, Wanted, distances};
 use super::unproven_ui;
 use crate::window::context::SheetContext;
@@ -159,7 +159,8 @@ fn outcome_ui(
         },
     );
     let after = distances(cx.press, &cx.document.settings, wanted.path, ms, is_upper_end);
-    distances_ui(ui, cx, &after, "what if");
+    distances_ui(ui, cx, &after);
+    steps_ui(ui, cx, &after, "what if");
 }
 
 /// The time taken forward: from the fit where it was fitted; the margin of the fit is carried over to a changed brake.
