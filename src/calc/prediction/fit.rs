@@ -6,7 +6,9 @@ use super::data::{BrakeData, PressureData};
 use super::refusal::PredictionRefusal;
 use super::setup::{At, drive_of, motion_path, pressures_of};
 use crate::in_force::tests_in_force;
-use crate::motion::{BuildUp, Estimate, FitCondition, FitRequest, FittedBrake, StopPrediction, Unknowns, fit_stops};
+use crate::motion::{
+    BuildUp, Estimate, FitCondition, FitRequest, FittedBrake, StopPrediction, StopSetup, Unknowns, fit_stops,
+};
 use crate::press::Press;
 use crate::statistics::Summary;
 use crate::stop_test::{BrakeState, ClockStart, StopPath, StopTest, Valves};
@@ -109,6 +111,15 @@ impl PathFit {
     pub fn predict(&self, press: &Press, at: &At, stops: u32) -> Result<StopPrediction, PredictionRefusal> {
         let drive = drive_of(press, at.upper_die, at.counterbalance)?;
         Ok(self.fitted.predict(&drive, at.command()?, stops)?)
+    }
+
+    /// Everything a stop predicted by the fitted brake depends on.
+    ///
+    /// # Refuses
+    /// As [`drive_of`]; an angle or a speed out of range.
+    pub fn setup(&self, press: &Press, at: &At) -> Result<StopSetup, PredictionRefusal> {
+        let drive = drive_of(press, at.upper_die, at.counterbalance)?;
+        Ok(StopSetup { drive, brake: self.fitted.brake(), path: motion_path(at.path), command: at.command()? })
     }
 
     /// The delay in milliseconds, with its 95 % interval.

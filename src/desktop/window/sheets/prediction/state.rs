@@ -2,9 +2,7 @@
 
 use std::sync::Arc;
 
-use calc::motion::{
-    Brake, Estimate, MotionRefusal, StopCurves, StopPrediction, StopSetup, Tolerance, Unknowns, stop_curves,
-};
+use calc::motion::{Estimate, MotionRefusal, StopCurves, StopPrediction, StopSetup, Tolerance, Unknowns, stop_curves};
 use calc::plant_settings::PlantSettings;
 use calc::prediction::{
     At, FitDeclined, LaterTest, PathFit, Predicted, PredictedDistance, PredictionRefusal, compare_later_tests,
@@ -103,14 +101,6 @@ impl Known {
     }
 }
 
-/// Drive, brake and condition, with the brake of the fit where it is wanted and there is one.
-pub fn setup(press: &Press, at: &At, fit: Option<&PathFit>) -> Result<StopSetup, PredictionRefusal> {
-    let Some(fit) = fit else { return setup_of(press, at) };
-    let brake: Brake = fit.fitted.brake();
-    let drive = calc::prediction::drive_of(press, at.upper_die, at.counterbalance)?;
-    Ok(StopSetup { drive, brake, path: calc::prediction::motion_path(at.path), command: at.command()? })
-}
-
 fn predicted(
     press: &Press,
     settings: &PlantSettings,
@@ -121,7 +111,7 @@ fn predicted(
     let at = wanted.at()?;
     let words = |refusal: PredictionRefusal| refusal.to_string();
     let of_motion = |refusal: MotionRefusal| refusal.to_string();
-    let setup = setup(press, &at, fit).map_err(words)?;
+    let setup = fit.map_or_else(|| setup_of(press, &at), |fit| fit.setup(press, &at)).map_err(words)?;
     let law = setup.brake.torque_law(setup.path);
     let curves = stop_curves(&setup.drive, &law, setup.command, Tolerance::STANDARD, 240).map_err(of_motion)?;
     let interval = match fit {
