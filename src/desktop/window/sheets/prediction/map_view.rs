@@ -44,7 +44,7 @@ pub fn map_ui(
                 job.stop();
             }
         });
-        ui.ctx().request_repaint();
+        ui.ctx().request_repaint_after(std::time::Duration::from_millis(40));
         return;
     }
     let mut cell = job.cell;
