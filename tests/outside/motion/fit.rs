@@ -166,7 +166,7 @@ fn a_wrong_rise_time_shows_as_lack_of_fit() {
     places.extend([(90.0, 4.0, 0.0), (90.0, 8.0, 0.0)]);
     let conditions = places.iter().map(|p| condition(*p, true_time(p.0, p.1, p.2), 0.0005, 10)).collect();
     let mut request = request(conditions, Unknowns::DelayAndTorque);
-    request.rise_time_s = 0.01;
+    request.build_up = BuildUp::Ramp { rise_time_s: 0.01 };
     let found = fit_stops(&request).unwrap();
     assert!(found.lack_of_fit, "{}", found.chi_squared);
 }

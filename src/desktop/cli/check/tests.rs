@@ -155,7 +155,7 @@ fn what_cannot_be_read_is_named_and_the_rest_is_checked() {
     assert_eq!(outcome.out.lines().count(), 24);
     let json = check(folder.path(), "--json");
     assert_eq!(json.code, 2);
-    assert_eq!(serde_json::from_str::<Value>(&json.out).unwrap().as_array().unwrap().len(), 20);
+    assert_eq!(serde_json::from_str::<Value>(&json.out).unwrap().as_array().unwrap().len(), 24);
     let none = check(&folder.path().join("none"), "");
     assert_eq!((none.code, none.out.as_str()), (2, ""));
     assert!(!none.err.is_empty());

@@ -45,9 +45,12 @@ pub struct MapDone {
     texture: Option<TextureHandle>,
 }
 
+/// What the thread hands over: the rows and the worst cell of the closing half.
+type Worked = Result<(Vec<MapRow>, Result<WorstCell, MotionRefusal>), MotionRefusal>;
+
 struct Running {
     watch: Arc<MapWatch>,
-    receiver: Receiver<Result<(Vec<MapRow>, Result<WorstCell, MotionRefusal>), MotionRefusal>>,
+    receiver: Receiver<Worked>,
 }
 
 /// The map of the sheet: none, being worked out, stopped, or done.
