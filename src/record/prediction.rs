@@ -2,8 +2,8 @@
 
 use calc::motion::{Estimate, Tolerance, Unknowns};
 use calc::prediction::{
-    At, BrakeData, Lift, PathFit, Predicted, PredictionData, compare_later_tests, distance_from_prediction, fit_path,
-    setup_of, worst_of_closing_half,
+    At, BrakeData, Lift, Margin, PathFit, Predicted, PredictionData, compare_later_tests, distance_from_prediction,
+    fit_path, setup_of, worst_of_closing_half,
 };
 use calc::press::Press;
 use calc::stop_test::{ClockStart, StopPath};
@@ -152,12 +152,12 @@ fn longest(press: &Press, path: StopPath, fit: Option<&PathFit>) -> Result<(At, 
     match fit {
         Some(fit) => {
             let time = fit.predict(press, &at, 1).map_err(words)?.stop_time_s;
-            let predicted = Predicted { ms: time.high * 1e3, is_upper_end: true, clock_start };
+            let predicted = Predicted { ms: time.high * 1e3, margin: Margin::Interval, clock_start };
             Ok((at, format!("{}; {way}", interval(time, 1e3, "ms", 1)), predicted))
         }
         None => {
             let ms = stop.stop_time_s * 1e3;
-            let predicted = Predicted { ms, is_upper_end: false, clock_start };
+            let predicted = Predicted { ms, margin: Margin::None, clock_start };
             Ok((at, format!("{ms:.1} ms by the entered figures, without interval; {way}"), predicted))
         }
     }

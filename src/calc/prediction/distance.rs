@@ -14,13 +14,35 @@ use crate::time_parts::{parts_for, times_of};
 use crate::units::{Length, LengthUnit, Time};
 use crate::verdict::{Answer, PartState, TimePart};
 
+/// What a predicted time holds beside the figure of the stop model.
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
+pub enum Margin {
+    /// Nothing: entered figures have no interval.
+    None,
+    /// It is the upper end of the 95 % prediction interval of a fit.
+    Interval,
+    /// The brake is changed from the fitted one; the margin of the fit is carried over to it.
+    CarriedOver,
+}
+
+impl Margin {
+    /// How the time came about.
+    pub const fn words(self) -> &'static str {
+        match self {
+            Self::None => "stop model with the entered figures, without interval",
+            Self::Interval => "upper end of the 95 % prediction interval of the fit",
+            Self::CarriedOver => "stop model of the changed brake, with the margin of the fit carried over",
+        }
+    }
+}
+
 /// A predicted stopping time that is taken forward.
 #[derive(Clone, Copy, PartialEq, Debug)]
 pub struct Predicted {
     /// The time, ms: the upper end of the prediction interval where there is one.
     pub ms: f64,
-    /// Whether it is the upper end of a 95 % prediction interval, or the bare figure of the model.
-    pub is_upper_end: bool,
+    /// What it holds beside the figure of the stop model.
+    pub margin: Margin,
     /// The event from which it counts.
     pub clock_start: ClockStart,
 }
@@ -96,13 +118,8 @@ pub fn distance_from_prediction(
     }
     let stopping = Time::from_ms_up(predicted.ms).ok_or(PredictionRefusal::NoTime)?;
     let mut steps = WorkedSteps::new();
-    let what = if predicted.is_upper_end {
-        "upper end of the 95 % prediction interval of the fit"
-    } else {
-        "stop model with the entered figures, without interval"
-    };
     let source = Source::new("prediction, not measured", "", Basis::Arithmetic);
-    steps.put("t", "predicted stopping time", expr![what], stopping, source);
+    steps.put("t", "predicted stopping time", expr![predicted.margin.words()], stopping, source);
     let parts = parts_for(press, safeguard, predicted.clock_start, stopping);
     let missing = parts
         .iter()
@@ -152,7 +169,7 @@ mod tests {
         let mut press = press_a();
         press.control_response = Some(Time::ms(10));
         for installed in [200, 360, 2000] {
-            let predicted = Predicted { ms: 150.0, is_upper_end: true, clock_start: ClockStart::ValveCurrent };
+            let predicted = Predicted { ms: 150.0, margin: Margin::Interval, clock_start: ClockStart::ValveCurrent };
             let found =
                 distance_from_prediction(&press, &curtain(installed), RuleSetId::Iso138552010, predicted).unwrap();
             assert_eq!(found.outcome.as_ref().unwrap().required, Length::mm(360));
@@ -160,7 +177,7 @@ mod tests {
             assert_eq!(found.spare(), Some(Length::mm(installed - 360)));
             assert!(found.words(LengthUnit::Millimetre).starts_with("Unproven"), "{found:?}");
         }
-        let seen = Predicted { ms: 150.0, is_upper_end: false, clock_start: ClockStart::FieldEntered };
+        let seen = Predicted { ms: 150.0, margin: Margin::None, clock_start: ClockStart::FieldEntered };
         let found = distance_from_prediction(&press, &curtain(400), RuleSetId::Iso138552010, seen).unwrap();
         assert_eq!(found.outcome.unwrap().required, Length::mm(300), "nothing the clock saw is added again");
     }
@@ -168,7 +185,7 @@ mod tests {
     #[test]
     fn a_time_is_rounded_up_and_no_time_is_refused() {
         let predict = |ms| {
-            let predicted = Predicted { ms, is_upper_end: true, clock_start: ClockStart::ValveCurrent };
+            let predicted = Predicted { ms, margin: Margin::Interval, clock_start: ClockStart::ValveCurrent };
             distance_from_prediction(&press_a(), &curtain(400), RuleSetId::Iso138552010, predicted)
         };
         assert_eq!(predict(150.000_1).unwrap().stopping, Time::from_base(150_001));

@@ -16,7 +16,7 @@ mod setup;
 
 pub use compare::{LaterTest, compare_later_tests};
 pub use data::{BrakeData, Lift, Metered, PredictionData, PressureData, RampData, TravelEntry};
-pub use distance::{Predicted, PredictedDistance, distance_from_prediction};
+pub use distance::{Margin, Predicted, PredictedDistance, distance_from_prediction};
 pub use fit::{FitDeclined, LeftOut, PathFit, fit_path};
 pub use refusal::PredictionRefusal;
 pub use setup::{At, brake_of, drive_of, kinematics_of, motion_path, setup_of, worst_of_closing_half};

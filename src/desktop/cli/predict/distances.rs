@@ -2,7 +2,7 @@
 
 use calc::motion::{Drive, StopCommand, StopPrediction, Unknowns};
 use calc::plant_settings::PlantSettings;
-use calc::prediction::{Predicted, PredictedDistance, distance_from_prediction, fit_path};
+use calc::prediction::{Margin, Predicted, PredictedDistance, distance_from_prediction, fit_path};
 use calc::press::Press;
 use calc::stop_test::ClockStart;
 use calc::units::LengthUnit;
@@ -34,7 +34,7 @@ impl Distances {
             .flatten();
         let predicted = Predicted {
             ms: 1e3 * fitted.map_or(stop_time_s, |fitted| fitted.stop_time_s.high),
-            is_upper_end: fitted.is_some(),
+            margin: if fitted.is_some() { Margin::Interval } else { Margin::None },
             clock_start: known(Some(press)).map_or(ClockStart::ValveCurrent, |data| data.clock_start),
         };
         let guards = press

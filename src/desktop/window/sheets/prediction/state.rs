@@ -5,7 +5,7 @@ use std::sync::Arc;
 use calc::motion::{Estimate, MotionRefusal, StopCurves, StopPrediction, StopSetup, Tolerance, Unknowns, stop_curves};
 use calc::plant_settings::PlantSettings;
 use calc::prediction::{
-    At, FitDeclined, LaterTest, PathFit, Predicted, PredictedDistance, PredictionRefusal, compare_later_tests,
+    At, FitDeclined, LaterTest, Margin, PathFit, Predicted, PredictedDistance, PredictionRefusal, compare_later_tests,
     distance_from_prediction, fit_path, setup_of, worst_of_closing_half,
 };
 use calc::press::Press;
@@ -120,8 +120,9 @@ fn predicted(
     };
     let worst = worst_of_closing_half(&setup)
         .map(|(found, stop)| (found.command.start_angle_rad().to_degrees(), stop.stop_time_s * 1e3));
+    let margin = if interval.is_some() { Margin::Interval } else { Margin::None };
     let mut stop = PredictedStop { setup, curves, interval, worst, distances: Vec::new() };
-    stop.distances = distances(press, settings, wanted.path, stop.forward_ms(), interval.is_some());
+    stop.distances = distances(press, settings, wanted.path, stop.forward_ms(), margin);
     Ok(stop)
 }
 
@@ -131,10 +132,10 @@ pub fn distances(
     settings: &PlantSettings,
     path: StopPath,
     ms: f64,
-    is_upper_end: bool,
+    margin: Margin,
 ) -> Vec<(String, PredictedDistance)> {
     let clock_start = press.prediction.as_ref().map_or(ClockStart::ValveCurrent, |data| data.clock_start);
-    let predicted = Predicted { ms, is_upper_end, clock_start };
+    let predicted = Predicted { ms, margin, clock_start };
     press
         .safeguards
         .iter()

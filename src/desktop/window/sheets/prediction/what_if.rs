@@ -5,6 +5,7 @@ use calc::motion::{
     Brake, BrakeCondition, Change, Counterbalance, Exhaust, PressureBrakeData, Stop, StopSetup, Tolerance, WhatIf,
     rad_s_from_per_min, what_if,
 };
+use calc::prediction::Margin;
 use egui::{Grid, Id, RichText, Ui, vec2};
 use figure::Role;
 
@@ -149,16 +150,9 @@ fn outcome_ui(
         }
     };
     table_ui(ui, cx, &found);
-    let (ms, is_upper_end) = forward_ms(cx, stop, known, wanted, draft, &found);
-    caption(
-        ui,
-        if is_upper_end {
-            format!("Taken forward: {ms:.1} ms, the upper end of the 95 % prediction interval.")
-        } else {
-            format!("Taken forward: {ms:.1} ms, the figure of the stop model, without interval.")
-        },
-    );
-    let after = distances(cx.press, &cx.document.settings, wanted.path, ms, is_upper_end);
+    let (ms, margin) = forward_ms(cx, stop, known, wanted, draft, &found);
+    caption(ui, format!("Taken forward: {ms:.1} ms, {}.", margin.words()));
+    let after = distances(cx.press, &cx.document.settings, wanted.path, ms, margin);
     distances_ui(ui, cx, &after);
     steps_ui(ui, cx, &after, "what if");
 }
@@ -171,18 +165,22 @@ fn forward_ms(
     wanted: &Wanted,
     draft: &WhatIfDraft,
     found: &WhatIf,
-) -> (f64, bool) {
+) -> (f64, Margin) {
     let after_ms = found.after.stop_time_s * 1e3;
-    let (Some(_), Ok(fit), Ok(mut at)) = (stop.interval, &known.fit, wanted.at()) else { return (after_ms, false) };
+    let (Some(_), Ok(fit), Ok(mut at)) = (stop.interval, &known.fit, wanted.at()) else {
+        return (after_ms, Margin::None);
+    };
     at.upper_die = draft.die.map_or(at.upper_die, calc::units::Mass::from_base);
     at.speed = draft.speed.map_or(at.speed, calc::units::Rate::from_base);
     at.counterbalance = draft.counterbalance.map(calc::units::Pressure::from_base);
     match fit.predict(cx.press, &at, 1) {
         Ok(predicted) => {
             let margin = predicted.stop_time_s.high - predicted.stop_time_s.value;
-            (after_ms + margin * 1e3, true)
+            let of_brake = [draft.operating, draft.needle, draft.fade, draft.worn, draft.extra_delay];
+            let is_changed = of_brake.iter().any(Option::is_some);
+            (after_ms + margin * 1e3, if is_changed { Margin::CarriedOver } else { Margin::Interval })
         }
-        Err(_) => (after_ms, false),
+        Err(_) => (after_ms, Margin::None),
     }
 }
 
