@@ -188,15 +188,7 @@ impl Question<'_> {
 
     /// The case as the rule set sees it.
     pub fn case(&self, chosen: Option<&Chosen>) -> Case {
-        let times = chosen.map_or(NO_TIME, |chosen| times_of(&chosen.parts));
-        Case {
-            kind: self.safeguard.kind.clone(),
-            clutch: Some(self.press.clutch),
-            conformity: self.press.conformity,
-            trip_speed: self.press.slowest_speed,
-            times,
-            supplement: self.safeguard.supplement.unwrap_or(Length::ZERO),
-        }
+        case_for(self.press, self.safeguard, chosen.map_or(NO_TIME, |chosen| times_of(&chosen.parts)))
     }
 
     /// What stands against the stop tests.
@@ -320,6 +312,18 @@ impl Question<'_> {
         {
             again(format!("The fastest speed in use, {speed}, is faster than any tested."));
         }
+    }
+}
+
+/// A safeguard of a press as a rule set sees it.
+pub(crate) fn case_for(press: &Press, safeguard: &Safeguard, times: Times) -> Case {
+    Case {
+        kind: safeguard.kind.clone(),
+        clutch: Some(press.clutch),
+        conformity: press.conformity,
+        trip_speed: press.slowest_speed,
+        times,
+        supplement: safeguard.supplement.unwrap_or(Length::ZERO),
     }
 }
 

@@ -14,6 +14,7 @@ pub mod limits;
 pub mod monthly;
 pub mod motion;
 pub mod plant_settings;
+pub mod prediction;
 pub mod press;
 pub mod reading;
 pub mod refusal;

@@ -3,7 +3,7 @@
 use crate::decimal::{self, Unreadable};
 use crate::refusal::Refusal;
 use crate::round::thousandths_text;
-use crate::units::{Angle, Length, Mass, Pressure, Rate, Time};
+use crate::units::{Angle, Area, Force, Inertia, Length, Mass, Pressure, Rate, Time, Torque};
 
 /// What a number may be: from `least` to `greatest`, both included, in thousandths of `unit`.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
@@ -75,6 +75,38 @@ limits! {
     MONITOR_SETTING: "Monitor setting", "ms", 1_000, 10_000_000, "The same range as a stopping time.";
     /// Share of the spare from which a reading is a warning.
     WARNING_SHARE: "Warning level", "% of the spare", 0, 100_000, "At 100 % the warning comes with the limit itself.";
+    /// Crank, gears and driven clutch parts reduced to the crank.
+    INERTIA: "Inertia at the crank", "kg m²", 1, 10_000_000_000, "Crank, gears and driven clutch parts together; ask the press maker.";
+    /// Slide with its share of the rod, without upper die.
+    SLIDE_MASS: "Slide mass", "kg", 10, 1_000_000_000, "The slide with its share of the rod, without the upper die.";
+    /// Upward force of the counterbalance.
+    COUNTERBALANCE_FORCE: "Counterbalance force", "N", 0, 100_000_000_000, "All cylinders or springs together; 0 N is none.";
+    /// Piston area of the counterbalance.
+    PISTON_AREA: "Counterbalance piston area", "cm²", 10, 1_000_000_000, "The pistons of all cylinders together.";
+    /// Running friction at the crank.
+    FRICTION_TORQUE: "Running friction", "N m", 0, 10_000_000_000, "0 N m is the cautious side where it is not known.";
+    /// Torque of the fully set brake at the crank.
+    BRAKE_TORQUE: "Brake torque", "N m", 1, 1_000_000_000_000, "The torque of the fully set brake, at the crank.";
+    /// Time from the stop command until the brake acts.
+    DEAD_TIME: "Dead time", "ms", 0, 10_000_000, "A brake that does nothing for 10 s is no brake.";
+    /// Time from the first to the full brake torque.
+    RISE_TIME: "Rise time", "ms", 0, 10_000_000, "A brake that takes 10 s to set is no brake.";
+    /// Time in which a pressure falls to 37 %.
+    TIME_CONSTANT: "Time constant", "ms", 10, 100_000_000, "The time in which the pressure falls to 37 %.";
+    /// A pressure of the clutch-brake.
+    BRAKE_PRESSURE: "Brake pressure", "bar", 10, 400_000, "Air units run near 5 bar, hydraulic ones below 400 bar.";
+    /// The pressure at which metering ends.
+    METERED_TO: "Metered to", "bar", 0, 400_000, "0 bar is a metered stage that lasts to the end.";
+    /// Travel of the slide from top dead centre.
+    TRAVEL: "Slide travel", "mm", 0, 3_000_000, "Counted downwards from top dead centre; 3 m is longer than any stroke.";
+    /// Share of the friction lost.
+    FADE: "Friction lost", "%", 0, 95_000, "By heat or oil; 0 % is a cold, clean lining.";
+    /// Wear of a lining.
+    WORN_DEPTH: "Worn depth", "mm", 0, 100_000, "New thickness less present thickness.";
+    /// Force of the brake springs with a new lining.
+    SPRING_FORCE: "Spring force", "N", 10, 1_000_000_000_000, "With a new lining, all springs together.";
+    /// Rate of the brake springs.
+    SPRING_RATE: "Spring rate", "N/mm", 0, 1_000_000_000_000, "All springs together.";
     /// Months between tests.
     INTERVAL_MONTHS: "Test interval", "months", 1_000, 120_000, "Once in ten years at the least.";
 }
@@ -140,7 +172,7 @@ macro_rules! checked {
         }
     )*};
 }
-checked!(Time, Length, Angle, Mass, Pressure, Rate);
+checked!(Time, Length, Angle, Mass, Pressure, Rate, Inertia, Force, Torque, Area);
 
 #[cfg(test)]
 mod tests {

@@ -1,6 +1,7 @@
 //! One press: what it is, what it carries, what happened to it.
 
 use crate::calendar::Moment;
+use crate::prediction::PredictionData;
 use crate::reading::{Reading, ReadingSetup};
 use crate::refusal::Refusal;
 use crate::safeguard::Safeguard;
@@ -105,6 +106,8 @@ pub struct Press {
     pub reference: Option<ReadingSetup>,
     /// Its monthly readings, in the order of entry.
     pub readings: Vec<Reading>,
+    /// What a stop can be predicted from, where anything of it is known.
+    pub prediction: Option<PredictionData>,
     /// What happened to it, in the order of entry.
     pub events: Vec<Event>,
 }

@@ -86,6 +86,23 @@ quantity!(
     Rate, "thousandths of a stroke per minute", "strokes/min"
 );
 
+quantity!(
+    /// A moment of inertia in whole thousandths of a kilogram metre squared.
+    Inertia, "thousandths of a kg m²", "kg m²"
+);
+quantity!(
+    /// A force in whole millinewtons, written in newtons.
+    Force, "millinewtons", "N"
+);
+quantity!(
+    /// A torque in whole millinewton metres, written in newton metres.
+    Torque, "millinewton metres", "N m"
+);
+quantity!(
+    /// An area in whole thousandths of a square centimetre.
+    Area, "thousandths of a cm²", "cm²"
+);
+
 impl Time {
     /// From whole milliseconds.
     pub const fn ms(count: i64) -> Self {

@@ -5,4 +5,5 @@ pub mod document;
 pub mod host;
 pub mod results;
 pub mod saving;
+pub mod stop_map;
 pub mod window;

@@ -29,6 +29,8 @@ samples![
     "presses/E-112.ron",
     "presses/E-113.ron",
     "presses/E-114.ron",
+    "presses/E-115.ron",
+    "presses/E-116.ron",
 ];
 
 /// Writes the sample plant into a folder.

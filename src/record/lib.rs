@@ -5,6 +5,7 @@
 
 mod flow;
 mod pdf;
+mod prediction;
 mod press_record;
 mod round_list;
 mod sections;

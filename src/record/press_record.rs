@@ -9,7 +9,7 @@ use figure::Fonts;
 use jiff::civil::Date;
 
 use crate::flow::{Flow, Paper};
-use crate::{Record, sections};
+use crate::{Record, prediction, sections};
 
 /// What the record is made from.
 #[derive(Clone, PartialEq, Debug)]
@@ -64,6 +64,7 @@ pub fn press_record(input: &RecordInput) -> Record {
         sections::safeguard(&mut flow, input, index, assessment);
     }
     sections::readings(&mut flow, input);
+    prediction::prediction(&mut flow, input);
     sections::events(&mut flow, press);
     sections::to_check(&mut flow, &assessments);
     sections::sign_off(&mut flow, input);

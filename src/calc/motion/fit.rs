@@ -1,6 +1,6 @@
 //! Brake figures from measured stops: delay and torque, on request also running friction, with their intervals; and what they predict.
 
-use super::brake::{Brake, RampBrake, StopPath};
+use super::brake::{Brake, PressureBrake, PressureBrakeData, RampBrake, StopPath};
 use super::drive::Drive;
 use super::fit_inference::{Estimate, Inference};
 use super::least_squares::{Minimum, Model, Unknown, minimise};
@@ -42,13 +42,57 @@ pub enum Unknowns {
     DelayTorqueAndFriction,
 }
 
+/// How the brake torque builds up: everything about the brake but its dead time and full torque.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum BuildUp {
+    /// A ramp.
+    Ramp {
+        /// Rise time of the brake torque.
+        rise_time_s: f64,
+    },
+    /// The falling pressure of a fluid-released brake.
+    Pressure {
+        /// The brake; its dead time and full torque are not used.
+        data: PressureBrakeData,
+        /// Which way it was asked to stop, in every condition.
+        path: StopPath,
+    },
+}
+
+impl BuildUp {
+    fn brake(&self, dead_time_s: f64, full_torque_nm: f64) -> Result<Brake, MotionRefusal> {
+        Ok(match *self {
+            Self::Ramp { rise_time_s } => Brake::Ramp(RampBrake::new(dead_time_s, rise_time_s, full_torque_nm)?),
+            Self::Pressure { data, .. } => {
+                Brake::Pressure(PressureBrake::new(PressureBrakeData { dead_time_s, full_torque_nm, ..data })?)
+            }
+        })
+    }
+
+    fn path(&self) -> StopPath {
+        match self {
+            Self::Ramp { .. } => StopPath::Normal,
+            Self::Pressure { path, .. } => *path,
+        }
+    }
+
+    /// Time from the dead time until the brake has built up.
+    fn rise_time_s(&self) -> Result<f64, MotionRefusal> {
+        match *self {
+            Self::Ramp { rise_time_s } => limits::RISE_TIME.check(rise_time_s),
+            // A pressure law builds up alike whatever its torque.
+            Self::Pressure { path, .. } => Ok(self.brake(0.0, 1.0)?.torque_law(path).built_up_s()),
+        }
+    }
+}
+
 /// What is to be fitted.
 #[derive(Clone, Debug, PartialEq)]
 pub struct FitRequest {
     /// The measured stops.
     pub conditions: Vec<FitCondition>,
-    /// Rise time of the brake torque, which is not fitted.
-    pub rise_time_s: f64,
+    /// How the brake torque builds up, which is not fitted.
+    pub build_up: BuildUp,
     /// Which figures are looked for.
     pub unknowns: Unknowns,
 }
@@ -79,7 +123,8 @@ pub struct FittedBrake {
     pub chi_squared: f64,
     /// The residuals are too great for the scatter of the stops (1 % level): the model misses something. The intervals are then widened.
     pub lack_of_fit: bool,
-    brake: RampBrake,
+    build_up: BuildUp,
+    brake: Brake,
     unknowns: Unknowns,
     inference: Inference,
     /// Variance of a single stop, pooled over the conditions, and its degrees of freedom.
@@ -95,7 +140,7 @@ pub struct StopPrediction {
     pub stop_time_s: Estimate,
 }
 
-/// Finds the figures of a ramp brake from measured stops.
+/// Finds the figures of a brake from measured stops.
 ///
 /// Each condition weighs n/s^2. The full model is solved for every condition, so angles, speeds, dies and counterbalances may all differ.
 /// The intervals come from the Jacobian and Student's t.
@@ -111,8 +156,8 @@ pub fn fit_stops(request: &FitRequest) -> Result<FittedBrake, MotionRefusal> {
     let weights: Vec<f64> =
         conditions.iter().map(|c| f64::from(c.stops) / (c.standard_deviation_s * c.standard_deviation_s)).collect();
     let degrees: Vec<f64> = conditions.iter().map(|c| f64::from(c.stops) - 1.0).collect();
-    let model = BrakeModel { conditions, rise_time_s: request.rise_time_s, unknowns: request.unknowns };
-    let start = place_to_start(&model, first_guess(request, &weights))?;
+    let model = BrakeModel { conditions, build_up: request.build_up, unknowns: request.unknowns };
+    let start = place_to_start(&model, first_guess(request, &weights)?)?;
     let minimum = minimise(&model, &measured, &weights, start)?;
     let Minimum { at, values, jacobian, chi_squared } = minimum;
     let separate = |one: usize, other: usize| MotionRefusal::CannotSeparate {
@@ -148,7 +193,8 @@ pub fn fit_stops(request: &FitRequest) -> Result<FittedBrake, MotionRefusal> {
             .collect(),
         chi_squared,
         lack_of_fit: inference.lack_of_fit,
-        brake: RampBrake::new(at[DELAY], request.rise_time_s, at[TORQUE])?,
+        build_up: request.build_up,
+        brake: request.build_up.brake(at[DELAY], at[TORQUE])?,
         unknowns: request.unknowns,
         inference,
         scatter: (scatter, scatter_degrees),
@@ -158,7 +204,7 @@ pub fn fit_stops(request: &FitRequest) -> Result<FittedBrake, MotionRefusal> {
 const NAMES: [&str; 3] = ["delay", "brake torque", "running friction"];
 
 fn check(request: &FitRequest) -> Result<(), MotionRefusal> {
-    limits::RISE_TIME.check(request.rise_time_s)?;
+    request.build_up.rise_time_s()?;
     for condition in &request.conditions {
         limits::MEASURED_TIME.check(condition.mean_stop_time_s)?;
         limits::MEASURED_SCATTER.check(condition.standard_deviation_s)?;
@@ -220,7 +266,7 @@ fn suggested_speed(conditions: &[FitCondition]) -> f64 {
 
 /// Straight line through stop time over angular momentum at the stop command, t = t_d + t_r/2 + J w0/T: the closed form of a drive of
 /// constant inertia. Only a place to start from.
-fn first_guess(request: &FitRequest, weights: &[f64]) -> Unknown {
+fn first_guess(request: &FitRequest, weights: &[f64]) -> Result<Unknown, MotionRefusal> {
     let conditions = &request.conditions;
     let momentum: Vec<f64> = conditions
         .iter()
@@ -233,12 +279,12 @@ fn first_guess(request: &FitRequest, weights: &[f64]) -> Unknown {
     let spread = mean(&|k| (momentum[k] - mean_momentum) * (momentum[k] - mean_momentum));
     let slope = mean(&|k| (momentum[k] - mean_momentum) * (time(k) - mean_time)) / spread;
     let shortest = conditions.iter().map(|c| c.mean_stop_time_s).fold(f64::INFINITY, f64::min);
-    let half_rise_s = 0.5 * request.rise_time_s;
+    let half_rise_s = 0.5 * request.build_up.rise_time_s()?;
     let line_delay_s = mean_time - slope * mean_momentum - half_rise_s;
     // A line that makes no sense, because of scatter or a short stop, gives way to a share of the shortest stop.
     let delay_s = if 0.0 < line_delay_s && line_delay_s < 0.9 * shortest { line_delay_s } else { 0.3 * shortest };
     let braking_s = (mean_time - delay_s - half_rise_s).max(0.2 * mean_time);
-    [delay_s, mean_momentum / braking_s, 0.01 * mean_momentum / braking_s]
+    Ok([delay_s, mean_momentum / braking_s, 0.01 * mean_momentum / braking_s])
 }
 
 /// The first guess, with more torque if its brake would not stop or hold the drive in every condition.
@@ -256,10 +302,10 @@ fn place_to_start(model: &BrakeModel<'_>, guess: Unknown) -> Result<Unknown, Mot
     })
 }
 
-/// The stop time of a ramp brake at every condition, as a function of the unknowns.
+/// The stop time of a brake at every condition, as a function of the unknowns.
 struct BrakeModel<'a> {
     conditions: &'a [FitCondition],
-    rise_time_s: f64,
+    build_up: BuildUp,
     unknowns: Unknowns,
 }
 
@@ -272,32 +318,32 @@ impl Model for BrakeModel<'_> {
     }
 
     fn values(&self, at: &Unknown) -> Result<Vec<f64>, MotionRefusal> {
-        self.conditions.iter().map(|c| stop_time(&c.drive, c.command, self.rise_time_s, self.unknowns, at)).collect()
+        self.conditions.iter().map(|c| stop_time(&c.drive, c.command, self.build_up, self.unknowns, at)).collect()
     }
 
     fn jacobian(&self, at: &Unknown) -> Result<Vec<Unknown>, MotionRefusal> {
-        self.conditions.iter().map(|c| gradient(&c.drive, c.command, self.rise_time_s, self.unknowns, at)).collect()
+        self.conditions.iter().map(|c| gradient(&c.drive, c.command, self.build_up, self.unknowns, at)).collect()
     }
 }
 
 fn stop_time(
     drive: &Drive,
     command: StopCommand,
-    rise_time_s: f64,
+    build_up: BuildUp,
     unknowns: Unknowns,
     at: &Unknown,
 ) -> Result<f64, MotionRefusal> {
-    solve(drive, command, rise_time_s, unknowns, at).map(|stop| stop.stop_time_s)
+    solve(drive, command, build_up, unknowns, at).map(|stop| stop.stop_time_s)
 }
 
 fn solve(
     drive: &Drive,
     command: StopCommand,
-    rise_time_s: f64,
+    build_up: BuildUp,
     unknowns: Unknowns,
     at: &Unknown,
 ) -> Result<Stop, MotionRefusal> {
-    let law = Brake::Ramp(RampBrake::new(at[DELAY], rise_time_s, at[TORQUE])?).torque_law(StopPath::Normal);
+    let law = build_up.brake(at[DELAY], at[TORQUE])?.torque_law(build_up.path());
     match unknowns {
         Unknowns::DelayAndTorque => stop(drive, &law, command, Tolerance::FINE),
         Unknowns::DelayTorqueAndFriction => {
@@ -312,13 +358,13 @@ fn solve(
 fn gradient(
     drive: &Drive,
     command: StopCommand,
-    rise_time_s: f64,
+    build_up: BuildUp,
     unknowns: Unknowns,
     at: &Unknown,
 ) -> Result<Unknown, MotionRefusal> {
     let mut gradient = [0.0; 3];
     let steps = [1e-4 * at[DELAY].max(1e-3), 1e-4 * at[TORQUE], 1e-4 * at[TORQUE]];
-    let time = |at: &Unknown| stop_time(drive, command, rise_time_s, unknowns, at);
+    let time = |at: &Unknown| stop_time(drive, command, build_up, unknowns, at);
     let count = match unknowns {
         Unknowns::DelayAndTorque => 2,
         Unknowns::DelayTorqueAndFriction => 3,
@@ -339,7 +385,7 @@ fn gradient(
 impl FittedBrake {
     /// The brake with the best figures.
     #[must_use]
-    pub fn brake(&self) -> RampBrake {
+    pub fn brake(&self) -> Brake {
         self.brake
     }
 
@@ -357,9 +403,9 @@ impl FittedBrake {
             self.full_torque_nm.value,
             self.friction_torque_nm.map_or(0.0, |friction| friction.value),
         ];
-        let rise_time_s = self.brake.rise_time_s();
-        let stop = solve(drive, command, rise_time_s, self.unknowns, &at)?;
-        let gradient = gradient(drive, command, rise_time_s, self.unknowns, &at)?;
+        let build_up = self.build_up;
+        let stop = solve(drive, command, build_up, self.unknowns, &at)?;
+        let gradient = gradient(drive, command, build_up, self.unknowns, &at)?;
         let (scatter, degrees) = self.scatter;
         let half_width = self.inference.prediction_half_width(&gradient, (scatter / count, degrees));
         Ok(StopPrediction { stop, stop_time_s: Estimate::around(stop.stop_time_s, half_width) })

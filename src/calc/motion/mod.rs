@@ -39,7 +39,7 @@ pub use curves::{CurvePoint, StopCurves, stop_curves};
 pub use drive::{
     Counterbalance, Drive, DriveData, Kinematics, STANDARD_GRAVITY_M_S2, rad_from_deg, rad_s_from_per_min,
 };
-pub use fit::{FitCondition, FitRequest, FittedBrake, FittedCondition, StopPrediction, Unknowns, fit_stops};
+pub use fit::{BuildUp, FitCondition, FitRequest, FittedBrake, FittedCondition, StopPrediction, Unknowns, fit_stops};
 pub use fit_inference::Estimate;
 pub use limits::Limit;
 pub use link_drive::{LinkDrive, ROWS_LEAST, ROWS_MOST, TravelRow};

@@ -210,7 +210,7 @@ pub enum WithinArg {
 #[derive(Args, Debug)]
 #[command(allow_negative_numbers = true)]
 pub struct DriveArgs {
-    /// A press file, from which stroke and rod are taken where they are not given.
+    /// A press file, from which drive and brake are taken where they are not given.
     #[arg(value_name = "PRESS-FILE")]
     pub press: Option<PathBuf>,
     /// Stroke of the slide, mm.
@@ -225,6 +225,9 @@ pub struct DriveArgs {
     /// Slide with its share of the rod and the upper die (for fit: without the die), kg.
     #[arg(long, value_name = "X")]
     pub moving_kg: Option<String>,
+    /// Another upper die than the heaviest of the press, kg.
+    #[arg(long, value_name = "X", requires = "press", conflicts_with = "moving_kg")]
+    pub die_kg: Option<String>,
     /// Crank, gears and driven clutch parts reduced to the crank, kg m².
     #[arg(long, value_name = "X")]
     pub inertia_kgm2: Option<String>,
@@ -279,9 +282,9 @@ pub struct MapArgs {
     /// The drive and its brake.
     #[command(flatten)]
     pub drive: DriveArgs,
-    /// Speeds, strokes a minute, parted by commas.
+    /// Speeds, strokes a minute, parted by commas; 60 from the slowest to the fastest of the press where none are given.
     #[arg(long, value_name = "A,B,...")]
-    pub speeds: String,
+    pub speeds: Option<String>,
     /// Where to write the map: the ending decides.
     #[arg(long, value_name = "FILE.csv|.svg|.png")]
     pub out: PathBuf,
@@ -294,7 +297,7 @@ pub struct FitArgs {
     /// The drive; its upper die is that of each stop test.
     #[command(flatten)]
     pub drive: DriveArgs,
-    /// Rise time of the brake torque, ms, which is not fitted.
+    /// Rise time of the brake torque, ms, which is not fitted; the press gives it where it knows its brake.
     #[arg(long, value_name = "X")]
     pub rise_ms: Option<String>,
     /// Look for the running friction as well.

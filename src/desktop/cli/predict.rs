@@ -1,6 +1,8 @@
 //! `slidehalt predict`, `map` and `fit`: stops predicted from drive data. A prediction is never a measurement.
 
+mod distances;
 mod fit;
+mod fit_of_press;
 mod map;
 mod read;
 
@@ -13,7 +15,8 @@ pub use map::map;
 use super::Outcome;
 use super::args::PredictArgs;
 use super::outcome::columns;
-use read::{Reader, drive, law};
+use distances::Distances;
+use read::{Reader, drive, law, press};
 
 /// What is said below every figure here.
 pub(super) const CAUTION: &str =
@@ -23,21 +26,29 @@ pub(super) const CAUTION: &str =
 pub fn predict(args: &PredictArgs) -> Outcome {
     let mut outcome = Outcome::default();
     let mut reader = Reader::default();
-    let drive = drive(&args.drive, &mut reader);
-    let law = law(&args.drive, &mut reader);
+    let opened = press(&args.drive, &mut reader);
+    let of_press = opened.as_ref().map(|opened| &opened.1);
+    let drive = drive(&args.drive, of_press, &mut reader);
+    let law = law(&args.drive, of_press, &mut reader);
     let speed = reader.needed(args.speed.as_ref(), "Speed", "--speed");
     let angle = reader.needed(args.angle.as_ref(), "Crank angle", "--angle");
     let command = match (speed, angle) {
         (Some(speed), Some(angle)) => reader.take(StopCommand::new(rad_from_deg(angle), rad_s_from_per_min(speed))),
         _ => None,
     };
-    let found = match (drive, law, command) {
-        (Some(drive), Some(law), Some(command)) => reader.take(stop(&drive, &law, command, Tolerance::STANDARD)),
+    let found = match (&drive, law, command) {
+        (Some(drive), Some(law), Some(command)) => reader.take(stop(drive, &law, command, Tolerance::STANDARD)),
         _ => None,
     };
     let Some(found) = found.filter(|_| reader.refusals.is_empty()) else {
         reader.refusals.iter().for_each(|refusal| outcome.refuse(refusal));
         return outcome;
+    };
+    let distances = match (&opened, &drive, command) {
+        (Some(opened), Some(drive), Some(command)) => {
+            Distances::of(&args.drive, opened, drive, command, found.stop_time_s)
+        }
+        _ => Distances::default(),
     };
     let (time_ms, angle_deg, travel_mm) =
         (found.stop_time_s * 1e3, found.stop_angle_rad.to_degrees(), found.slide_travel_m * 1e3);
@@ -55,6 +66,8 @@ pub fn predict(args: &PredictArgs) -> Outcome {
             "holding_torque_nm": found.holding_torque_nm,
             "load_torque_nm": found.load_torque_nm,
             "answer": "unproven",
+            "from_stop_tests": distances.fitted_json(),
+            "safeguards": distances.guards_json(),
         });
         outcome.line(serde_json::to_string_pretty(&value).unwrap_or_default());
         return outcome;
@@ -77,6 +90,7 @@ pub fn predict(args: &PredictArgs) -> Outcome {
     for line in columns(&rows.map(|row| row.to_vec())) {
         outcome.line(line);
     }
+    distances.tell(&mut outcome);
     outcome.line(CAUTION);
     outcome
 }

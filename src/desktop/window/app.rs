@@ -538,6 +538,7 @@ pub fn empty_press(tag: String) -> Press {
         stop_tests: Vec::new(),
         reference: None,
         readings: Vec::new(),
+        prediction: None,
         events: Vec::new(),
     }
 }

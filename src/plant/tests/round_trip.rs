@@ -5,13 +5,14 @@ use std::path::Path;
 use calc::calendar::Moment;
 use calc::limits::{self, Limit};
 use calc::plant_settings::PlantSettings;
+use calc::prediction::{BrakeData, Lift, Metered, PredictionData, PressureData, RampData, TravelEntry};
 use calc::press::*;
 use calc::reading::{Reading, ReadingPlace, ReadingSetup};
 use calc::rules::RuleSetId;
 use calc::safeguard::*;
 use calc::schedule::Interval;
 use calc::stop_test::*;
-use calc::units::{Angle, Length, Mass, Pressure, Rate, Time};
+use calc::units::{Angle, Area, Force, Inertia, Length, Mass, Pressure, Rate, Time, Torque};
 use calc::value_taken::ValueTaken;
 use jiff::civil::{Date, date, time};
 use plant::v1::{press_from_text, press_to_text, settings_from_text, settings_to_text};
@@ -119,7 +120,7 @@ fn kind() -> impl Strategy<Value = SafeguardKind> {
     ]
 }
 
-fn safeguard() -> impl Strategy<Value = Safeguard> {
+fn safeguard() -> BoxedStrategy<Safeguard> {
     let installed = (length(limits::INSTALLED), length(limits::TAPE_UNCERTAINTY), words(), moment())
         .prop_map(|(distance, uncertainty, by, at)| Installed { distance, uncertainty, by, at });
     (
@@ -146,6 +147,7 @@ fn safeguard() -> impl Strategy<Value = Safeguard> {
                 }
             },
         )
+        .boxed()
 }
 
 fn condition() -> impl Strategy<Value = Condition> {
@@ -184,17 +186,17 @@ fn stops() -> impl Strategy<Value = Vec<Time>> {
     vec(duration(limits::STOPPING_TIME), 0..12)
 }
 
-fn stop_test() -> impl Strategy<Value = StopTest> {
-    (moment(), words(), condition(), select(ClockStart::ALL), instrument(), stops()).prop_map(
-        |(at, by, condition, clock_start, instrument, stops)| StopTest {
+fn stop_test() -> BoxedStrategy<StopTest> {
+    (moment(), words(), condition(), select(ClockStart::ALL), instrument(), stops())
+        .prop_map(|(at, by, condition, clock_start, instrument, stops)| StopTest {
             at,
             by,
             condition,
             clock_start,
             instrument,
             stops,
-        },
-    )
+        })
+        .boxed()
 }
 
 fn setup() -> impl Strategy<Value = ReadingSetup> {
@@ -209,6 +211,72 @@ fn event() -> impl Strategy<Value = Event> {
         safeguard,
         note,
     })
+}
+
+fn pressure(limit: Limit) -> impl Strategy<Value = Pressure> {
+    within(limit).prop_map(Pressure::from_base)
+}
+
+fn brake() -> BoxedStrategy<BrakeData> {
+    let dead = || of(duration(limits::DEAD_TIME));
+    let torque = || of(within(limits::BRAKE_TORQUE).prop_map(Torque::from_base));
+    let constant = || of(duration(limits::TIME_CONSTANT));
+    let bar = || of(pressure(limits::BRAKE_PRESSURE));
+    let metered =
+        (bar(), of(pressure(limits::METERED_TO)), constant()).prop_map(|(from, to, slow)| Metered { from, to, slow });
+    prop_oneof![
+        Just(BrakeData::NotStated),
+        (dead(), of(duration(limits::RISE_TIME)), torque())
+            .prop_map(|(dead_time, rise_time, torque)| BrakeData::Ramp(RampData { dead_time, rise_time, torque })),
+        (dead(), torque(), bar(), bar(), bar(), constant(), of(metered), constant(), any::<bool>()).prop_map(
+            |(dead_time, torque, engaged, clutch_release, touch, fast, metered, dump, is_typical)| {
+                BrakeData::Pressure(PressureData {
+                    dead_time,
+                    torque,
+                    engaged,
+                    clutch_release,
+                    touch,
+                    fast,
+                    metered,
+                    dump,
+                    is_typical,
+                })
+            }
+        ),
+    ]
+    .boxed()
+}
+
+/// Boxed, as the strategies of a press by value no longer fit on the stack of a test.
+fn prediction() -> BoxedStrategy<Option<PredictionData>> {
+    let lift = prop_oneof![
+        Just(Lift::NotStated),
+        Just(Lift::None),
+        of(within(limits::COUNTERBALANCE_FORCE).prop_map(Force::from_base)).prop_map(Lift::Force),
+        (of(pressure(limits::COUNTERBALANCE)), of(within(limits::PISTON_AREA).prop_map(Area::from_base)))
+            .prop_map(|(pressure, area)| Lift::Cylinders { pressure, area }),
+    ];
+    let row = (within(limits::ANGLE), length(limits::TRAVEL))
+        .prop_map(|(angle, travel)| TravelEntry { angle: Angle::from_base(angle), travel });
+    let data = (
+        of(within(limits::SLIDE_MASS)),
+        of(within(limits::INERTIA)),
+        lift,
+        of(within(limits::FRICTION_TORQUE)),
+        vec(row, 0..4),
+        brake(),
+        select(ClockStart::ALL),
+    )
+        .prop_map(|(mass, inertia, counterbalance, friction, travel, brake, clock_start)| PredictionData {
+            slide_mass: mass.map(Mass::from_base),
+            inertia: inertia.map(Inertia::from_base),
+            counterbalance,
+            friction: friction.map(Torque::from_base),
+            travel,
+            brake,
+            clock_start,
+        });
+    of(data).boxed()
 }
 
 /// Readings, some of them under the reference, some under a setup of their own.
@@ -247,7 +315,7 @@ prop_compose! {
         mut safeguards in vec(safeguard(), 0..4),
         stop_tests in vec(stop_test(), 0..4),
         readings in readings(reference.clone()),
-        events in vec(event(), 0..4),
+        (prediction, events) in (prediction(), vec(event(), 0..4)),
         reference in Just(reference),
     ) -> Press {
         let mut names = std::collections::BTreeSet::new();
@@ -259,7 +327,7 @@ prop_compose! {
             heaviest_die: die.map(Mass::from_base),
             conformity, control_response,
             monitor: monitor.map(|setting| BrakeMonitor { setting }),
-            safeguards, stop_tests, reference, readings, events,
+            safeguards, stop_tests, reference, readings, prediction, events,
         }
     }
 }

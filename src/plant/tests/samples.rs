@@ -6,7 +6,9 @@ use std::path::{Path, PathBuf};
 
 use calc::assess::{assess_press, gravest};
 use calc::monthly::{Change, sentence, standing, suspect_sentence};
+use calc::motion::Unknowns;
 use calc::plant_settings::PlantSettings;
+use calc::prediction::{compare_later_tests, fit_path};
 use calc::press::{Clutch, ClutchMedium, DriveKind, EventKind, Frame, Press};
 use calc::schedule::due_at;
 use calc::stop_test::{BrakeState, StopPath, Valves};
@@ -101,6 +103,8 @@ fn every_press_gives_the_answer_it_was_made_for() {
         ("E-112", vec![Holds]),
         ("E-113", vec![Unproven]),
         ("E-114", vec![Unproven, Holds]),
+        ("E-115", vec![Holds, Holds]),
+        ("E-116", vec![Holds, Holds]),
     ];
     assert_eq!(answers, BTreeMap::from(intended));
 }
@@ -239,4 +243,29 @@ fn a_repair_begins_a_new_series_and_a_growing_delay_is_told_from_braking() {
     let a_day = 0.7 / 30.4375;
     let interval = suspect.found.changes.unwrap().delay.interval;
     assert!(interval.low < a_day && a_day < interval.high, "{interval:?}");
+}
+
+/// The stops of E-115 and E-116 were drawn about the stop times that a Runge-Kutta script of its own gives for these brakes.
+#[test]
+fn the_fit_finds_the_brakes_that_made_the_stops() {
+    let (_, presses) = sample_plant();
+    let mut tests = Vec::new();
+    for (tag, path, delay_ms, torque_nm) in [
+        ("E-115", StopPath::Normal, 58.0, 1900.0),
+        ("E-116", StopPath::Normal, 30.0, 7800.0),
+        ("E-116", StopPath::Emergency, 30.0, 7800.0),
+    ] {
+        let fit = fit_path(&presses[tag], path, Unknowns::DelayAndTorque).unwrap();
+        let (delay, torque) = (fit.delay_ms(), fit.fitted.full_torque_nm);
+        // Twice the half-width of a 95 % interval about the estimate: missed once in ten thousand draws.
+        assert!((delay.value - delay_ms).abs() < delay.high - delay.low, "{tag} {path:?}: {delay:?}");
+        assert!((torque.value - torque_nm).abs() < torque.high - torque.low, "{tag} {path:?}: {torque:?}");
+        assert!(delay.high - delay.low < 0.2 * delay_ms && torque.high - torque.low < 0.1 * torque_nm);
+        assert!(!fit.fitted.lack_of_fit && fit.left_out.is_empty());
+        tests.push(fit.used.len());
+    }
+    assert_eq!(tests, [14, 12, 6]);
+    let later = compare_later_tests(&presses["E-115"], StopPath::Normal);
+    assert_eq!(later.iter().map(|later| (later.test, later.earlier)).collect::<Vec<_>>(), [(12, 12), (13, 12)]);
+    assert!(later.iter().all(|later| later.is_within()), "{later:?}");
 }

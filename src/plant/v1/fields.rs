@@ -84,6 +84,30 @@ numbers! {
     RodMm: limits::ROD;
     /// A press force, kN.
     ForceKn: limits::FORCE;
+    /// A slide mass, kg.
+    SlideKg: limits::SLIDE_MASS;
+    /// An inertia at the crank, kg m².
+    InertiaKgm2: limits::INERTIA;
+    /// A force of a counterbalance, N.
+    LiftN: limits::COUNTERBALANCE_FORCE;
+    /// A piston area, cm².
+    PistonCm2: limits::PISTON_AREA;
+    /// A running friction, N m.
+    FrictionNm: limits::FRICTION_TORQUE;
+    /// A brake torque, N m.
+    BrakeNm: limits::BRAKE_TORQUE;
+    /// A dead time, ms.
+    DeadMs: limits::DEAD_TIME;
+    /// A rise time, ms.
+    RiseMs: limits::RISE_TIME;
+    /// A time constant, ms.
+    ConstantMs: limits::TIME_CONSTANT;
+    /// A pressure of the clutch-brake, bar.
+    BrakeBar: limits::BRAKE_PRESSURE;
+    /// The pressure at which metering ends, bar.
+    MeteredToBar: limits::METERED_TO;
+    /// A travel of the slide, mm.
+    TravelMm: limits::TRAVEL;
 }
 
 macro_rules! counts {

@@ -9,6 +9,7 @@ use calc::stop_test;
 use calc::units::{Angle, Length, Mass, Pressure, Rate, Time};
 
 use super::fields::*;
+use super::prediction::{file_of_prediction, prediction_of};
 use super::shape::*;
 
 /// The version that is written.
@@ -100,6 +101,7 @@ pub(super) fn press_of(file: PressFile) -> Result<Press, String> {
         stop_tests: file.stop_tests.into_iter().map(stop_test_of).collect(),
         reference,
         readings,
+        prediction: file.prediction.map(prediction_of),
         events: file
             .events
             .into_iter()
@@ -158,6 +160,7 @@ pub(super) fn file_of_press(press: &Press) -> PressFile {
                 stops_ms: reading.stops.iter().map(|stop| StopMs(stop.base())).collect(),
             })
             .collect(),
+        prediction: press.prediction.as_ref().map(file_of_prediction),
         events: press
             .events
             .iter()

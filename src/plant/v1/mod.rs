@@ -2,6 +2,7 @@
 
 mod fields;
 mod meaning;
+mod prediction;
 mod shape;
 
 use std::path::Path;

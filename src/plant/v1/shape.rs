@@ -66,6 +66,8 @@ stored! {
         reference: Option<ReadingSetup>,
         #[serde(default, skip_serializing_if = "Vec::is_empty")]
         readings: Vec<Reading>,
+        #[serde(default, skip_serializing_if = "Option::is_none")]
+        prediction: Option<Prediction>,
         #[serde(default, skip_serializing_if = "Vec::is_empty")]
         events: Vec<Event>,
     }
@@ -152,6 +154,39 @@ stored! {
         stops_ms: Vec<StopMs>,
     }
 
+    /// What a stop can be predicted from.
+    struct Prediction {
+        clock_start: Named<ClockStart>,
+        #[serde(default, skip_serializing_if = "Option::is_none")]
+        slide_kg: Option<SlideKg>,
+        #[serde(default, skip_serializing_if = "Option::is_none")]
+        inertia_kgm2: Option<InertiaKgm2>,
+        #[serde(default, skip_serializing_if = "Option::is_none")]
+        counterbalance: Option<Lift>,
+        #[serde(default, skip_serializing_if = "Option::is_none")]
+        friction_nm: Option<FrictionNm>,
+        #[serde(default, skip_serializing_if = "Option::is_none")]
+        brake: Option<Brake>,
+        #[serde(default, skip_serializing_if = "Vec::is_empty")]
+        travel: Vec<Travel>,
+    }
+
+    /// One row of a travel table.
+    struct Travel {
+        angle_deg: AngleDeg,
+        travel_mm: TravelMm,
+    }
+
+    /// The metered stage of a two-stage unit.
+    struct Metered {
+        #[serde(default, skip_serializing_if = "Option::is_none")]
+        from_bar: Option<BrakeBar>,
+        #[serde(default, skip_serializing_if = "Option::is_none")]
+        to_bar: Option<MeteredToBar>,
+        #[serde(default, skip_serializing_if = "Option::is_none")]
+        slow_ms: Option<ConstantMs>,
+    }
+
     /// Something that happened.
     struct Event {
         at: At,
@@ -215,6 +250,52 @@ stored_choice! {
 
     /// The gap of an interlocked guard.
     enum Gap { NotStated, Closed, Open(Opening) }
+
+    /// What holds the slide up.
+    enum Lift {
+        None,
+        Force {
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            force_n: Option<LiftN>,
+        },
+        Cylinders {
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            pressure_bar: Option<CounterbalanceBar>,
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            area_cm2: Option<PistonCm2>,
+        },
+    }
+
+    /// How the brake sets.
+    enum Brake {
+        Ramp {
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            dead_ms: Option<DeadMs>,
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            rise_ms: Option<RiseMs>,
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            torque_nm: Option<BrakeNm>,
+        },
+        Pressure {
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            dead_ms: Option<DeadMs>,
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            torque_nm: Option<BrakeNm>,
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            engaged_bar: Option<BrakeBar>,
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            clutch_release_bar: Option<BrakeBar>,
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            touch_bar: Option<BrakeBar>,
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            fast_ms: Option<ConstantMs>,
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            metered: Option<Metered>,
+            #[serde(default, skip_serializing_if = "Option::is_none")]
+            dump_ms: Option<ConstantMs>,
+            pressures_typical: bool,
+        },
+    }
 
     /// The shape of an opening.
     enum Shape {

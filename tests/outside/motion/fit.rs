@@ -2,7 +2,8 @@
 
 use super::drives::{command, drive_a, ramp};
 use calc::motion::{
-    Brake, FitCondition, FitRequest, MotionRefusal, RampBrake, StopPath, Tolerance, Unknowns, fit_stops, stop,
+    Brake, BuildUp, Exhaust, FitCondition, FitRequest, MotionRefusal, PressureBrake, PressureBrakeData, RampBrake,
+    StopPath, Tolerance, Unknowns, fit_stops, stop,
 };
 
 const DEAD_S: f64 = 0.045;
@@ -50,7 +51,7 @@ fn condition(
 }
 
 fn request(conditions: Vec<FitCondition>, unknowns: Unknowns) -> FitRequest {
-    FitRequest { conditions, rise_time_s: RISE_S, unknowns }
+    FitRequest { conditions, build_up: BuildUp::Ramp { rise_time_s: RISE_S }, unknowns }
 }
 
 const PLACES: [(f64, f64, f64); 6] = [
@@ -73,7 +74,7 @@ fn exact_stops_give_the_figures_back() {
         assert!((found.full_torque_nm.value - FULL_NM).abs() < 1e-4 * 4.2);
         assert!(found.friction_torque_nm.is_none() && !found.lack_of_fit);
         assert!(found.conditions.iter().all(|c| c.residual_s.abs() < 1e-8));
-        assert!((found.brake().dead_time_s() - DEAD_S).abs() < 1e-8);
+        assert!((found.brake().torque_law(StopPath::Normal).dead_time_s() - DEAD_S).abs() < 1e-8);
     }
     // Friction apart from brake torque shows only in stops that end while the brake builds up, so very slow ones are among these.
     let mut places = PLACES.to_vec();
@@ -165,7 +166,7 @@ fn a_wrong_rise_time_shows_as_lack_of_fit() {
     places.extend([(90.0, 4.0, 0.0), (90.0, 8.0, 0.0)]);
     let conditions = places.iter().map(|p| condition(*p, true_time(p.0, p.1, p.2), 0.0005, 10)).collect();
     let mut request = request(conditions, Unknowns::DelayAndTorque);
-    request.rise_time_s = 0.01;
+    request.build_up = BuildUp::Ramp { rise_time_s: 0.01 };
     let found = fit_stops(&request).unwrap();
     assert!(found.lack_of_fit, "{}", found.chi_squared);
 }
@@ -218,4 +219,39 @@ fn a_fit_predicts() {
     assert!(found.predict(&drive_a(), command(80.0, 55.0), 0).is_err());
     let brake = Brake::Ramp(RampBrake::new(DEAD_S, RISE_S, FULL_NM).unwrap());
     assert_eq!(brake.torque_law(StopPath::Normal), brake.torque_law(StopPath::Emergency));
+}
+
+/// Delay and torque of a two-stage pressure brake come back as well, on either path, with the pressures given.
+#[test]
+fn a_pressure_brake_is_found_again() {
+    let data = PressureBrakeData {
+        full_torque_nm: 5200.0,
+        dead_time_s: 0.02,
+        operating_pressure_pa: 60e5,
+        clutch_release_pressure_pa: 36e5,
+        touch_pressure_pa: 24e5,
+        exhaust: Exhaust::TwoStage {
+            fast_time_constant_s: 0.012,
+            metered_time_constant_s: 0.06,
+            metered_from_pa: 12e5,
+            metered_to_pa: 2e5,
+        },
+        emergency_time_constant_s: 0.012,
+    };
+    for path in [StopPath::Normal, StopPath::Emergency] {
+        let law = Brake::Pressure(PressureBrake::new(data).unwrap()).torque_law(path);
+        let conditions = PLACES
+            .iter()
+            .map(|p| {
+                let drive = drive_a().with_upper_die_mass(p.2).unwrap();
+                let time = stop(&drive, &law, command(p.0, p.1), Tolerance::STANDARD).unwrap().stop_time_s;
+                condition(*p, time, 0.001, 10)
+            })
+            .collect();
+        let unlike = PressureBrakeData { dead_time_s: 0.5, full_torque_nm: 1.0, ..data };
+        let build_up = BuildUp::Pressure { data: unlike, path };
+        let found = fit_stops(&FitRequest { conditions, build_up, unknowns: Unknowns::DelayAndTorque }).unwrap();
+        assert!((found.dead_time_s.value - 0.02).abs() < 1e-7, "{found:?}");
+        assert!((found.full_torque_nm.value - 5200.0).abs() < 0.1, "{found:?}");
+    }
 }

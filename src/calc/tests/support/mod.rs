@@ -88,6 +88,7 @@ pub fn press() -> Press {
         stop_tests: vec![stop_test(90, &TEN)],
         reference: None,
         readings: Vec::new(),
+        prediction: None,
         events: Vec::new(),
     }
 }

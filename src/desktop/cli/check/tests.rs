@@ -55,6 +55,10 @@ fn one_line_a_safeguard_with_answer_tag_and_figures() {
         ("Unproven", "E-113"),
         ("Unproven", "E-114"),
         ("Holds", "E-114"),
+        ("Holds", "E-115"),
+        ("Holds", "E-115"),
+        ("Holds", "E-116"),
+        ("Holds", "E-116"),
     ];
     assert_eq!(found, meant);
 }
@@ -148,10 +152,10 @@ fn what_cannot_be_read_is_named_and_the_rest_is_checked() {
     let outcome = check(folder.path(), "");
     assert_eq!(outcome.code, 2);
     assert!(outcome.err.contains("E-101.ron"), "{}", outcome.err);
-    assert_eq!(outcome.out.lines().count(), 20);
+    assert_eq!(outcome.out.lines().count(), 24);
     let json = check(folder.path(), "--json");
     assert_eq!(json.code, 2);
-    assert_eq!(serde_json::from_str::<Value>(&json.out).unwrap().as_array().unwrap().len(), 20);
+    assert_eq!(serde_json::from_str::<Value>(&json.out).unwrap().as_array().unwrap().len(), 24);
     let none = check(&folder.path().join("none"), "");
     assert_eq!((none.code, none.out.as_str()), (2, ""));
     assert!(!none.err.is_empty());

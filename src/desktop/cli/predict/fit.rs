@@ -1,7 +1,9 @@
 //! `slidehalt fit`: delay and brake torque that explain the measured stops of a press.
 
 use calc::in_force::tests_in_force;
-use calc::motion::{FitCondition, FitRequest, StopCommand, Unknowns, fit_stops, rad_from_deg, rad_s_from_per_min};
+use calc::motion::{
+    BuildUp, FitCondition, FitRequest, StopCommand, Unknowns, fit_stops, rad_from_deg, rad_s_from_per_min,
+};
 use calc::stop_test::{StopPath, Valves};
 use calc::value_taken::summary_ms;
 use serde_json::json;
@@ -10,12 +12,19 @@ use super::super::Outcome;
 use super::super::args::{FitArgs, PathArg};
 use super::super::outcome::columns;
 use super::CAUTION;
-use super::read::{Reader, drive_with, press};
+use super::fit_of_press;
+use super::read::{Reader, drive_with, is_all_of_press, known, press};
 
 pub fn fit(args: &FitArgs) -> Outcome {
     let mut outcome = Outcome::default();
     let mut reader = Reader::default();
-    let press = press(&args.drive, &mut reader);
+    let press = press(&args.drive, &mut reader).map(|opened| opened.1);
+    if let Some(press) = press
+        .as_ref()
+        .filter(|press| is_all_of_press(&args.drive) && args.rise_ms.is_none() && known(Some(press)).is_some())
+    {
+        return fit_of_press::fit_of_press(press, args);
+    }
     let slide = reader.needed(args.drive.moving_kg.as_ref(), "Mass of the slide without die", "--moving-kg");
     let rise = reader.needed(args.rise_ms.as_ref(), "Rise of the brake torque", "--rise-ms");
     let mut conditions = Vec::new();
@@ -55,7 +64,11 @@ pub fn fit(args: &FitArgs) -> Outcome {
     let fitted = match rise {
         Some(rise) if reader.refusals.is_empty() => {
             let unknowns = if args.friction { Unknowns::DelayTorqueAndFriction } else { Unknowns::DelayAndTorque };
-            reader.take(fit_stops(&FitRequest { conditions, rise_time_s: rise * 1e-3, unknowns }))
+            reader.take(fit_stops(&FitRequest {
+                conditions,
+                build_up: BuildUp::Ramp { rise_time_s: rise * 1e-3 },
+                unknowns,
+            }))
         }
         _ => None,
     };

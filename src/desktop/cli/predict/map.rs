@@ -2,21 +2,25 @@
 
 use std::fmt::Write as _;
 
-use calc::motion::{AngleRange, GoOn, MapCell, MapRow, StopMap, Tolerance, WorstCell, rad_s_from_per_min};
+use calc::motion::{AngleRange, MapCell, MapRow, StopMap, Tolerance, WorstCell, rad_s_from_per_min};
+use calc::press::Press;
 
 use super::super::Outcome;
 use super::super::args::MapArgs;
 use super::CAUTION;
-use super::read::{Reader, drive, law};
+use super::read::{Reader, drive, law, press};
+use crate::stop_map::{MapWatch, all_rows};
 
 const ANGLES: usize = 360;
 
 pub fn map(args: &MapArgs) -> Outcome {
     let mut outcome = Outcome::default();
     let mut reader = Reader::default();
-    let drive = drive(&args.drive, &mut reader);
-    let law = law(&args.drive, &mut reader);
-    let speeds: Vec<f64> = args.speeds.split([',', ';']).filter_map(|text| reader.number(text, "Speed")).collect();
+    let opened = press(&args.drive, &mut reader);
+    let of_press = opened.as_ref().map(|opened| &opened.1);
+    let drive = drive(&args.drive, of_press, &mut reader);
+    let law = law(&args.drive, of_press, &mut reader);
+    let speeds = speeds(args, of_press, &mut reader);
     let in_rad_s = speeds.iter().map(|speed| rad_s_from_per_min(*speed)).collect();
     let map = match (drive, law) {
         (Some(drive), Some(law)) if reader.refusals.is_empty() => {
@@ -24,7 +28,7 @@ pub fn map(args: &MapArgs) -> Outcome {
         }
         _ => None,
     };
-    let rows = map.as_ref().and_then(|map| reader.take(all_rows(map)));
+    let rows = map.as_ref().and_then(|map| reader.take(all_rows(map, &MapWatch::default())));
     let (Some(map), Some(rows)) = (map, rows) else {
         reader.refusals.iter().for_each(|refusal| outcome.refuse(refusal));
         return outcome;
@@ -49,15 +53,20 @@ pub fn map(args: &MapArgs) -> Outcome {
     outcome
 }
 
-/// The rows, worked out on two threads.
-fn all_rows(map: &StopMap) -> Result<Vec<MapRow>, calc::motion::MotionRefusal> {
-    std::thread::scope(|scope| {
-        let first = scope.spawn(|| map.map_rows(0..ANGLES / 2, |_| GoOn::Yes));
-        let second = map.map_rows(ANGLES / 2..ANGLES, |_| GoOn::Yes);
-        let mut rows = first.join().expect("the stop model does not panic")?;
-        rows.extend(second?);
-        Ok(rows)
-    })
+/// The speeds as given, or 60 over the speeds in use.
+fn speeds(args: &MapArgs, press: Option<&Press>, reader: &mut Reader) -> Vec<f64> {
+    if let Some(text) = &args.speeds {
+        return text.split([',', ';']).filter_map(|text| reader.number(text, "Speed")).collect();
+    }
+    match press.and_then(|press| Some((press.slowest_speed?.to_f64(), press.fastest_speed?.to_f64()))) {
+        Some((slowest, fastest)) => {
+            (0..60).map(|step| slowest + (fastest - slowest) * f64::from(step) / 59.0).collect()
+        }
+        None => {
+            reader.refusals.push("No speeds are given. Add --speeds A,B,... in strokes a minute.".into());
+            Vec::new()
+        }
+    }
 }
 
 fn worst_words(worst: &WorstCell) -> String {

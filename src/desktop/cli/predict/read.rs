@@ -5,9 +5,13 @@ use std::path::Path;
 
 use calc::motion::{
     Brake, Counterbalance, Drive, DriveData, Exhaust, Kinematics, LinkDrive, PressureBrake, PressureBrakeData,
-    RampBrake, SliderCrank, StopPath, TorqueLaw, TravelRow, rad_from_deg,
+    RampBrake, SliderCrank, TorqueLaw, TravelRow, rad_from_deg,
 };
-use calc::press::Press;
+use calc::plant_settings::PlantSettings;
+use calc::prediction::{BrakeData, PredictionData, PredictionRefusal, brake_of, kinematics_of, motion_path};
+use calc::press::{Clutch, DriveKind, Press};
+use calc::stop_test;
+use calc::units::Mass;
 
 use super::super::args::{DriveArgs, PathArg};
 
@@ -52,17 +56,44 @@ impl Reader {
 }
 
 /// The press file that was named, if one was.
-pub fn press(args: &DriveArgs, reader: &mut Reader) -> Option<Press> {
+pub fn press(args: &DriveArgs, reader: &mut Reader) -> Option<(PlantSettings, Press)> {
     let path = args.press.as_ref()?;
-    reader.take(plant::open_press_file(path)).map(|(_, press)| press)
+    reader.take(plant::open_press_file(path))
 }
 
-/// The drive. Stroke and rod come from the press where they are not given.
-pub fn drive(args: &DriveArgs, reader: &mut Reader) -> Option<Drive> {
-    let press = press(args, reader);
-    let mass = reader.needed(args.moving_kg.as_ref(), "Moving mass", "--moving-kg");
-    let upper_die = Some(0.0);
-    drive_with(args, press.as_ref(), (mass, upper_die), reader)
+/// Whether the press gives the whole drive and brake, so that its own stop tests speak of them.
+pub fn is_all_of_press(args: &DriveArgs) -> bool {
+    args.press.is_some()
+        && args.link_table.is_none()
+        && [&args.stroke_mm, &args.rod_mm, &args.moving_kg, &args.inertia_kgm2, &args.counterbalance_n]
+            .into_iter()
+            .chain([&args.friction_nm, &args.brake_ramp, &args.brake_pressure])
+            .all(Option::is_none)
+}
+
+/// What the press file knows of its drive and brake.
+pub fn known(press: Option<&Press>) -> Option<&PredictionData> {
+    press.and_then(|press| press.prediction.as_ref())
+}
+
+/// The drive. What is not given comes from the press; with its slide comes its heaviest upper die, or the one that is given.
+pub fn drive(args: &DriveArgs, press: Option<&Press>, reader: &mut Reader) -> Option<Drive> {
+    let of_press = known(press).and_then(|data| data.slide_mass).map(Mass::to_f64);
+    let slide = match (&args.moving_kg, of_press) {
+        (None, Some(slide)) => Some(slide),
+        (text, _) => reader.needed(text.as_ref(), "Moving mass", "--moving-kg"),
+    };
+    let heaviest = press.and_then(|press| press.heaviest_die).map(Mass::to_f64);
+    let upper_die = match (&args.moving_kg, &args.die_kg, heaviest) {
+        (Some(_), _, _) => Some(0.0),
+        (None, None, Some(heaviest)) => Some(heaviest),
+        (None, None, None) if slide.is_none() => None,
+        (None, text, _) => reader.needed(text.as_ref(), "Upper die mass", "--die-kg"),
+    };
+    if press.is_some_and(|press| matches!(press.clutch, Clutch::FullRevolution { .. })) {
+        reader.refusals.push(PredictionRefusal::FullRevolution.to_string());
+    }
+    drive_with(args, press, (slide, upper_die), reader)
 }
 
 /// The drive with a slide and an upper die of their own.
@@ -73,16 +104,25 @@ pub fn drive_with(
     reader: &mut Reader,
 ) -> Option<Drive> {
     let kinematics = kinematics(args, press, reader);
-    let inertia = reader.needed(args.inertia_kgm2.as_ref(), "Inertia", "--inertia-kgm2");
-    let counterbalance = reader.optional(args.counterbalance_n.as_ref(), "Counterbalance force", 0.0);
-    let friction = reader.optional(args.friction_nm.as_ref(), "Running friction", 0.0);
-    let force_n = counterbalance?;
+    let of_press = known(press);
+    let inertia = match (&args.inertia_kgm2, of_press.and_then(|data| data.inertia)) {
+        (None, Some(inertia)) => Some(inertia.to_f64()),
+        (text, _) => reader.needed(text.as_ref(), "Inertia", "--inertia-kgm2"),
+    };
+    let of_press_friction = of_press.and_then(|data| data.friction).map_or(0.0, |torque| torque.to_f64());
+    let friction = reader.optional(args.friction_nm.as_ref(), "Running friction", of_press_friction);
+    let counterbalance = match (&args.counterbalance_n, of_press.and_then(|data| data.counterbalance.as_motion())) {
+        (None, Some(lift)) => Some(lift),
+        (text, _) => reader
+            .optional(text.as_ref(), "Counterbalance force", 0.0)
+            .map(|force_n| if force_n == 0.0 { Counterbalance::None } else { Counterbalance::Force { force_n } }),
+    };
     reader.take(Drive::new(DriveData {
         kinematics: kinematics?,
         reduced_inertia_kg_m2: inertia?,
         slide_mass_kg: slide?,
         upper_die_mass_kg: upper_die?,
-        counterbalance: if force_n == 0.0 { Counterbalance::None } else { Counterbalance::Force { force_n } },
+        counterbalance: counterbalance?,
         friction_torque_nm: friction?,
     }))
 }
@@ -90,6 +130,14 @@ pub fn drive_with(
 fn kinematics(args: &DriveArgs, press: Option<&Press>, reader: &mut Reader) -> Option<Kinematics> {
     if let Some(path) = &args.link_table {
         return link_table(path, reader).map(Kinematics::LinkDrive);
+    }
+    if let Some(press) = press
+        && press.drive == DriveKind::Link
+        && known(Some(press)).is_some_and(|data| !data.travel.is_empty())
+        && args.stroke_mm.is_none()
+        && args.rod_mm.is_none()
+    {
+        return reader.take(kinematics_of(press));
     }
     let of_press = |length: Option<calc::units::Length>| length.map(|length| length.to_f64());
     let stroke = match (&args.stroke_mm, press.and_then(|press| of_press(press.stroke))) {
@@ -128,13 +176,20 @@ fn link_table(path: &Path, reader: &mut Reader) -> Option<LinkDrive> {
     reader.take(LinkDrive::new(&rows))
 }
 
-/// The torque law of the brake on the stop path.
-pub fn law(args: &DriveArgs, reader: &mut Reader) -> Option<TorqueLaw> {
-    let path = match args.path {
-        PathArg::Normal => StopPath::Normal,
-        PathArg::Emergency => StopPath::Emergency,
-    };
+/// The stop path as the press's stop tests name it.
+pub fn path(args: &DriveArgs) -> stop_test::StopPath {
+    match args.path {
+        PathArg::Normal => stop_test::StopPath::Normal,
+        PathArg::Emergency => stop_test::StopPath::Emergency,
+    }
+}
+
+/// The torque law of the brake on the stop path; the brake comes from the press where none is given.
+pub fn law(args: &DriveArgs, press: Option<&Press>, reader: &mut Reader) -> Option<TorqueLaw> {
+    let path = motion_path(path(args));
+    let of_press = press.filter(|press| known(Some(press)).is_some_and(|data| data.brake != BrakeData::NotStated));
     let brake = match (&args.brake_ramp, &args.brake_pressure) {
+        (None, None) if of_press.is_some() => of_press.and_then(|press| reader.take(brake_of(press))),
         (Some(text), None) => ramp(text, reader).map(Brake::Ramp),
         (None, Some(text)) => pressure(text, reader).map(Brake::Pressure),
         _ => {

@@ -2,6 +2,7 @@
 
 mod events;
 mod form;
+pub mod prediction;
 pub mod press;
 pub mod readings;
 pub mod records;
@@ -30,13 +31,16 @@ pub enum Sheet {
     Safeguards,
     /// Monthly readings: limits, drift, step, forecast.
     Readings,
+    /// Drive and brake, predicted stop, map, fit, what if.
+    Prediction,
     /// What is missing, sign-off, print.
     Records,
 }
 
 impl Sheet {
     /// Every sheet.
-    pub const ALL: &[Self] = &[Self::Press, Self::StopTests, Self::Safeguards, Self::Readings, Self::Records];
+    pub const ALL: &[Self] =
+        &[Self::Press, Self::StopTests, Self::Safeguards, Self::Readings, Self::Prediction, Self::Records];
 
     /// The name on its tab.
     pub const fn name(self) -> &'static str {
@@ -45,6 +49,7 @@ impl Sheet {
             Self::StopTests => "Stop tests",
             Self::Safeguards => "Safeguards",
             Self::Readings => "Readings",
+            Self::Prediction => "Prediction",
             Self::Records => "Records",
         }
     }
@@ -58,6 +63,9 @@ impl Sheet {
                 scrolled(ui, self, cx, |ui| safeguards::safeguards_ui(ui, cx, &mut drafts.safeguards, wishes))
             }
             Self::Readings => scrolled(ui, self, cx, |ui| readings::readings_ui(ui, cx, &mut drafts.readings, wishes)),
+            Self::Prediction => {
+                scrolled(ui, self, cx, |ui| prediction::prediction_ui(ui, cx, &mut drafts.prediction, wishes))
+            }
             Self::Records => scrolled(ui, self, cx, |ui| records::records_ui(ui, cx, &mut drafts.records, wishes)),
         }
     }
@@ -79,6 +87,8 @@ pub struct SheetDrafts {
     pub safeguards: safeguards::SafeguardsDrafts,
     /// On the sheet of readings.
     pub readings: readings::ReadingsDrafts,
+    /// On the sheet of predictions.
+    pub prediction: prediction::PredictionDrafts,
     /// On the sheet of records.
     pub records: records::RecordsDrafts,
 }
