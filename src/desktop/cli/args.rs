@@ -61,7 +61,7 @@ pub struct CheckArgs {
     /// Plant folders and press files.
     #[arg(required = true, value_name = "PATH")]
     pub paths: Vec<PathBuf>,
-    /// Another rule set than the plant's.
+    /// Another rule set than the plant's: us-1910-217, us-1910-217-h, ansi-b11-19, iso-13855-2010, iso-13855-2024, eu-press, east-asia.
     #[arg(long, value_parser = rules)]
     pub rules: Option<RuleSetId>,
     /// Write JSON.
@@ -78,10 +78,10 @@ pub struct RecordArgs {
     /// The press file, in the presses folder of its plant.
     #[arg(value_name = "PRESS-FILE")]
     pub press: PathBuf,
-    /// Where to write the record.
+    /// Where to write the record. An older PDF of that name is replaced, unless it is a kept record.
     #[arg(long, value_name = "FILE.pdf")]
     pub out: PathBuf,
-    /// Another rule set than the plant's.
+    /// Another rule set than the plant's: us-1910-217, us-1910-217-h, ansi-b11-19, iso-13855-2010, iso-13855-2024, eu-press, east-asia.
     #[arg(long, value_parser = rules)]
     pub rules: Option<RuleSetId>,
     /// The paper.
@@ -108,7 +108,7 @@ pub enum PaperArg {
 #[derive(Args, Debug)]
 #[command(allow_negative_numbers = true)]
 pub struct StopsArgs {
-    /// Stopping times in ms.
+    /// Stopping times in ms, parted by blanks.
     #[arg(required = true, value_name = "MS")]
     pub stops: Vec<String>,
     /// Write JSON.
@@ -139,7 +139,7 @@ pub struct AddReadingArgs {
     /// The day, with or without a time of day: 2026-12-01, "2026-12-01 14:30".
     #[arg(long)]
     pub date: String,
-    /// The timed stops, ms, parted by commas (or by ; or spaces where the comma is the decimal mark).
+    /// The timed stops, ms, parted by commas, or by ; or blanks where the comma is the decimal mark. 187,5 alone is two stops.
     #[arg(long, value_name = "A,B,C", allow_hyphen_values = true)]
     pub stops_ms: String,
     /// Another speed than the reference condition's, strokes a minute.
@@ -321,7 +321,7 @@ pub struct DistanceArgs {
     /// One stopping time, ms.
     #[arg(long, value_name = "X", conflicts_with = "stops_ms")]
     pub stopping_ms: Option<String>,
-    /// Several timed stops, ms, parted by commas (or by ; or spaces where the comma is the decimal mark).
+    /// Several timed stops, ms, parted by commas, or by ; or blanks where the comma is the decimal mark. 187,5 alone is two stops.
     #[arg(long, value_name = "A,B,...", allow_hyphen_values = true)]
     pub stops_ms: Option<String>,
     /// Response of the sensing device, ms.
