@@ -60,7 +60,7 @@ fn form_ui(ui: &mut Ui, form: &mut Form) {
     if let Some(Commit::Set(name, _)) = text_field(ui, id("Name"), FieldKind::words("Name"), &form.name, drafts) {
         form.name = name;
     }
-    form.refused = drafts.refused();
+    form.refused = drafts.refused().len();
 }
 
 fn harness(form: Form) -> Harness<'static, Form> {

@@ -44,4 +44,36 @@ fn empty_states_say_what_to_do() {
     let mut window = whole::on_samples(size);
     window.click("Plant settings…");
     pictures::keep("window-dialog-settings", &window.harness.render().unwrap());
+    let mut window = whole::on_samples(size);
+    window.ctrl(Key::N);
+    window.type_in("E-101");
+    window.key(Key::Enter);
+    pictures::keep("window-dialog-new-press", &window.harness.render().unwrap());
+    window.key(Key::Escape);
+    window.ctrl(Key::Num3);
+    window.fill("installed distance", "99999");
+    window.key(Key::Tab);
+    assert!(window.shows("An entry on the sheet Safeguards cannot be taken."));
+    pictures::keep("window-no-result", &window.harness.render().unwrap());
+    window.ctrl(Key::P);
+    window.ctrl(Key::PageDown);
+    pictures::keep("window-unproven", &window.harness.render().unwrap());
+    let mut window = whole::on(size, |folder| {
+        let mut known = plant::create(folder, &fixture::plant_settings()).unwrap();
+        let mut press = fixture::press();
+        press.safeguards.push(fixture::curtain("a curtain at the left with a very long name for its place", 700));
+        press.safeguards.push(fixture::curtain("right curtain", 300));
+        press.description = "A description that goes on for longer than any bar at the top of a window can hold".into();
+        plant::save_press(folder, &press, None, &mut known).unwrap();
+        let mut bare = fixture::press();
+        bare.tag = "P-0000000000000000000000000000000000012".into();
+        bare.safeguards.clear();
+        plant::save_press(folder, &bare, None, &mut known).unwrap();
+        std::fs::write(folder.join("presses/P-09.ron"), "(version: 1, press: (tag: 7").unwrap();
+    });
+    window.click("in");
+    pictures::keep("window-crowded", &window.harness.render().unwrap());
+    window.ctrl(Key::PageDown);
+    window.ctrl(Key::Num3);
+    pictures::keep("window-no-safeguard", &window.harness.render().unwrap());
 }

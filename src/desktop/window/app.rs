@@ -12,6 +12,7 @@ use jiff::civil::{Date, DateTime};
 use super::commands::Command;
 use super::context::SheetContext;
 use super::dialogs::{self, Dialog, Then};
+use super::header::NoResult;
 use super::jobs::Jobs;
 use super::overview::{OverviewDraft, overview_ui};
 use super::sheets::{Sheet, SheetDrafts};
@@ -331,8 +332,8 @@ impl App {
         let document = open.history.document();
         let Some(press) = self.view.press.as_ref().and_then(|tag| document.press(tag)) else { return };
         self.messages.clear();
-        if let Some(why) = header::no_result_words(&self.drafts.refused()) {
-            self.messages.refuse(format!("The record is not printed. {why}"));
+        if let Some(why) = NoResult::of(&self.drafts.refused()) {
+            self.messages.refuse(format!("The record is not printed. {} {}", why.sentence, why.what_to_do));
             return;
         }
         match super::sheets::records::print(document, press, &self.drafts.records, &self.given, self.view.unit) {
@@ -363,19 +364,21 @@ impl App {
     }
 
     fn views(&mut self, ui: &mut Ui, wishes: &mut Wishes) {
-        let Self { given, open, results, view, drafts, overview, messages, .. } = self;
+        let Self { given, open, results, view, drafts, shelved, overview, messages, .. } = self;
         let history = open.as_ref().map(|open| &open.history);
         let shown = history.filter(|_| !view.is_overview).and_then(|history| {
             let press = history.document().press(view.press.as_deref()?)?;
             Some((history, press, results.press(&press.tag)?))
         });
-        let refused = drafts.refused();
+        let no_result = NoResult::of(&drafts.refused());
         Panel::bottom("status").show_separator_line(true).frame(panel_frame(10, 6)).show(ui, |ui| {
             status::status_ui(ui, messages, history, given);
         });
         Panel::left("presses").resizable(false).exact_size(218.0).frame(panel_frame(10, 10)).show(ui, |ui| {
-            let without_result = view.press.clone().filter(|_| !refused.is_empty());
-            press_list::press_list_ui(ui, history, results, view, (given.today, without_result.as_deref()), wishes);
+            let shown = view.press.clone().filter(|_| no_result.is_some());
+            let waiting = shelved.iter().filter(|(_, drafts)| !drafts.refused().is_empty());
+            let without_result: Vec<&str> = waiting.map(|(tag, _)| tag.as_str()).chain(shown.as_deref()).collect();
+            press_list::press_list_ui(ui, history, results, view, (given.today, &without_result), wishes);
         });
         Panel::top("bar").show_separator_line(false).frame(panel_frame(12, 8)).show(ui, |ui| {
             bar::bar_ui(ui, shown.map(|(_, press, _)| &**press), view, history, wishes);
@@ -400,9 +403,10 @@ impl App {
             safeguard,
             unit: view.unit,
             today: given.today,
+            is_without_result: no_result.is_some(),
         };
         Panel::top("header").show_separator_line(true).frame(panel_frame(12, 0)).show(ui, |ui| {
-            header::header_ui(ui, &cx, view.sheet, header::no_result_words(&refused), wishes);
+            header::header_ui(ui, &cx, view.sheet, no_result.as_ref(), wishes);
         });
         CentralPanel::default().frame(panel_frame(12, 10)).show(ui, |ui| {
             view.sheet.ui(ui, &cx, drafts, wishes);
@@ -499,7 +503,7 @@ impl WindowApp for App {
             self.follow();
             context.request_repaint();
         }
-        if self.jobs.is_closing {
+        if self.jobs.asks_to_close() {
             context.send_viewport_cmd(ViewportCommand::Close);
         }
     }

@@ -44,8 +44,14 @@ fn title_ui(ui: &mut Ui, press: Option<&Press>, view: &ViewState, history: Optio
         (None, Some(history)) => (history.document().settings.name.as_str(), String::new()),
         (None, None) => ("Slidehalt", String::new()),
     };
-    ui.add(egui::Label::new(RichText::new(name).font(theme::strong(20.0))).truncate());
-    ui.add(egui::Label::new(RichText::new(words).size(15.0)).truncate());
+    let room = ui.available_size() * egui::vec2(if words.is_empty() { 1.0 } else { 0.6 }, 1.0);
+    ui.scope(|ui| {
+        ui.set_max_width(room.x);
+        ui.add(egui::Label::new(RichText::new(name).font(theme::strong(20.0))).truncate());
+    });
+    if !words.is_empty() {
+        ui.add(egui::Label::new(RichText::new(words).size(15.0)).truncate());
+    }
 }
 
 /// Light or dark, mm or inches; from the right.

@@ -25,6 +25,8 @@ pub struct SheetContext<'a> {
     pub unit: LengthUnit,
     /// Today.
     pub today: Date,
+    /// Whether an entry cannot be taken, so that no answer is shown: the assessments are those of what stood there before.
+    pub is_without_result: bool,
 }
 
 impl<'a> SheetContext<'a> {

@@ -374,9 +374,11 @@ fn plant_ui(ui: &mut Ui, draft: &mut PlantDraft, wishes: &mut Wishes) -> Outcome
             settings.rules = rules;
         }
     });
-    row_ui(ui, "", |ui| {
-        caption(ui, settings.rules.edition());
-    });
+    if settings.rules.edition() != settings.rules.title() {
+        row_ui(ui, "", |ui| {
+            caption(ui, settings.rules.edition());
+        });
+    }
     row_ui(ui, "Value taken forward", |ui| {
         let wish = bare_choice_ui(ui, id("wish"), "Value taken forward", 320.0, Wished(settings.wish));
         if let Some(wish) = wish {
@@ -426,7 +428,7 @@ fn plant_ui(ui: &mut Ui, draft: &mut PlantDraft, wishes: &mut Wishes) -> Outcome
         }
     });
     let mut outcome = Outcome::Stays;
-    let is_sound = drafts.refused() == 0;
+    let is_sound = drafts.refused().is_empty();
     ui.horizontal(|ui| {
         if ui.add_enabled(is_sound, egui::Button::new("Take over")).clicked() {
             let settings = settings.clone();

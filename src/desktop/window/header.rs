@@ -14,27 +14,24 @@ use super::widgets::{empty_state, shortcut_button};
 use super::wishes::{Wish, Wishes};
 use crate::document::History;
 
-/// A button for a command and what it asks for.
-type CommandButton = (Command, fn() -> Wish);
-
 /// Height of the strip, kept where there is none, so that the sheet below does not jump when the first stop is typed.
 const STRIP_MM: f32 = 22.5;
 
 /// Shows the head of a press. While an entry cannot be taken, `no_result` says so in place of the answer.
-pub fn header_ui(ui: &mut Ui, cx: &SheetContext, sheet: Sheet, no_result: Option<String>, wishes: &mut Wishes) {
+pub fn header_ui(ui: &mut Ui, cx: &SheetContext, sheet: Sheet, no_result: Option<&NoResult>, wishes: &mut Wishes) {
     match cx.assessment() {
         Some(assessment) => {
-            safeguards_row_ui(ui, cx, no_result.is_some(), wishes);
+            safeguards_row_ui(ui, cx, wishes);
             let strip = StripInput::of(assessment, cx.unit).filter(|_| no_result.is_none());
-            match (strip, &no_result) {
+            match (strip, no_result) {
                 (Some(input), _) => {
                     drawing_ui(ui, &reach_strip(&input, width_mm(ui), &theme::drawing_fonts()));
                 }
                 (None, Some(_)) => no_strip_ui(ui, "No distance is drawn while an entry cannot be taken."),
                 (None, None) => no_strip_ui(ui, "No distance to draw yet."),
             }
-            match &no_result {
-                Some(words) => no_result_ui(ui, words),
+            match no_result {
+                Some(no_result) => no_result_ui(ui, no_result),
                 None => sentence_ui(ui, cx),
             }
         }
@@ -42,8 +39,8 @@ pub fn header_ui(ui: &mut Ui, cx: &SheetContext, sheet: Sheet, no_result: Option
             let keys = ui.ctx().format_shortcut(&Command::ShowSheet(2).shortcut());
             let what = format!("Add one on the sheet Safeguards ({keys}).");
             empty_state(ui, "This press has no safeguard yet", &what);
-            if let Some(words) = &no_result {
-                no_result_ui(ui, words);
+            if let Some(no_result) = no_result {
+                no_result_ui(ui, no_result);
             }
         }
     }
@@ -52,23 +49,30 @@ pub fn header_ui(ui: &mut Ui, cx: &SheetContext, sheet: Sheet, no_result: Option
     ui.add_space(4.0);
 }
 
-/// What is said while entries cannot be taken; `None` when all could be.
-pub fn no_result_words(refused: &[(Sheet, usize)]) -> Option<String> {
-    if refused.is_empty() {
-        return None;
-    }
-    let places: Vec<String> = refused
-        .iter()
-        .map(|(sheet, count)| match count {
-            1 => format!("an entry on the sheet {} cannot be taken", sheet.name()),
-            _ => format!("{count} entries on the sheet {} cannot be taken", sheet.name()),
+/// Why no answer is given.
+pub struct NoResult {
+    /// "An entry on the sheet Press cannot be taken."
+    pub sentence: String,
+    /// The first refusal, and what to do.
+    pub what_to_do: String,
+}
+
+impl NoResult {
+    /// `None` when every entry could be taken.
+    pub fn of(refused: &[(Sheet, Vec<String>)]) -> Option<Self> {
+        let first = refused.first()?.1.first()?;
+        let places: Vec<String> = refused
+            .iter()
+            .map(|(sheet, words)| match words.len() {
+                1 => format!("an entry on the sheet {} cannot be taken", sheet.name()),
+                count => format!("{count} entries on the sheet {} cannot be taken", sheet.name()),
+            })
+            .collect();
+        Some(Self {
+            sentence: format!("{}.", calc::assess::capitalised(&places.join(", and "))),
+            what_to_do: format!("{first} Escape in the field brings back what stood there."),
         })
-        .collect();
-    let first = places.join(", and ");
-    Some(format!(
-        "{}. Correct it, or press Escape in the field to bring back what stood there.",
-        calc::assess::capitalised(&first)
-    ))
+    }
 }
 
 fn no_strip_ui(ui: &mut Ui, words: &str) {
@@ -94,11 +98,11 @@ fn tabs_ui(ui: &mut Ui, shown: Sheet, wishes: &mut Wishes) {
     });
 }
 
-fn safeguards_row_ui(ui: &mut Ui, cx: &SheetContext, is_without_result: bool, wishes: &mut Wishes) {
+fn safeguards_row_ui(ui: &mut Ui, cx: &SheetContext, wishes: &mut Wishes) {
     ui.horizontal_wrapped(|ui| {
         ui.spacing_mut().item_spacing.x = 3.0;
         for (index, (safeguard, assessment)) in cx.press.safeguards.iter().zip(&cx.result.assessments).enumerate() {
-            let mark = if is_without_result { AnswerMark::Unproven } else { assessment.answer.into() };
+            let mark = if cx.is_without_result { AnswerMark::Unproven } else { assessment.answer.into() };
             mark_ui(ui, mark, 10.0);
             let name = calc::assess::capitalised(&safeguard.name);
             if ui.selectable_label(index == cx.safeguard, name).clicked() {
@@ -111,7 +115,7 @@ fn safeguards_row_ui(ui: &mut Ui, cx: &SheetContext, is_without_result: bool, wi
 
 /// Room for a sentence and its remedies, kept whether both are there or not.
 fn two_lines_ui(ui: &mut Ui, add: impl FnOnce(&mut Ui)) {
-    let height = ui.text_style_height(&egui::TextStyle::Body) * 2.0 + 10.0;
+    let height = ui.text_style_height(&egui::TextStyle::Body) * 2.0 + 16.0;
     ui.allocate_ui(egui::vec2(ui.available_width(), height), |ui| {
         ui.set_min_height(height);
         ui.vertical(add);
@@ -128,8 +132,11 @@ fn answer_ui(ui: &mut Ui, mark: AnswerMark, role: Role, word: &str, sentence: &s
     });
 }
 
-fn no_result_ui(ui: &mut Ui, words: &str) {
-    two_lines_ui(ui, |ui| answer_ui(ui, AnswerMark::Unproven, Role::Unproven, "No result", words));
+fn no_result_ui(ui: &mut Ui, no_result: &NoResult) {
+    two_lines_ui(ui, |ui| {
+        answer_ui(ui, AnswerMark::Unproven, Role::Unproven, "No result", &no_result.sentence);
+        ui.add(egui::Label::new(&no_result.what_to_do).wrap());
+    });
 }
 
 fn sentence_ui(ui: &mut Ui, cx: &SheetContext) {
@@ -155,14 +162,18 @@ pub fn nothing_shown_ui(ui: &mut Ui, history: Option<&History>, wishes: &mut Wis
     };
     ui.add_space((ui.available_height() * 0.25).max(0.0));
     empty_state(ui, title, what);
-    let commands: &[CommandButton] = match history {
-        None => &[(Command::OpenPlant, || Wish::OpenPlant), (Command::NewPlant, || Wish::NewPlant)],
-        Some(_) => &[(Command::NewPress, || Wish::NewPress)],
+    let commands: &[Command] = match history {
+        None => &[Command::OpenPlant, Command::NewPlant],
+        Some(_) => &[Command::NewPress],
     };
-    for (command, wish) in commands {
+    for command in commands {
         ui.vertical_centered(|ui| {
             if shortcut_button(ui, command.name(), &command.shortcut(), true).clicked() {
-                wishes.push(wish());
+                wishes.push(match command {
+                    Command::OpenPlant => Wish::OpenPlant,
+                    Command::NewPlant => Wish::NewPlant,
+                    _ => Wish::NewPress,
+                });
             }
         });
     }

@@ -19,6 +19,7 @@ pub struct Jobs {
     waited: bool,
     /// Whether the window is closing for good.
     pub is_closing: bool,
+    has_asked_to_close: bool,
 }
 
 impl Jobs {
@@ -59,6 +60,11 @@ impl Jobs {
     /// Whether a dialog could not be opened since the last call.
     pub fn dialog_failed(&mut self) -> bool {
         std::mem::take(&mut self.has_failed)
+    }
+
+    /// Whether the host is to be asked to close the window; once is enough.
+    pub fn asks_to_close(&mut self) -> bool {
+        self.is_closing && !std::mem::replace(&mut self.has_asked_to_close, true)
     }
 
     /// Whether commands were put off in this very frame, in which the field has not been drawn yet.

@@ -42,7 +42,7 @@ pub fn press_list_ui(
     history: Option<&History>,
     results: &Results,
     view: &mut ViewState,
-    (today, without_result): (Date, Option<&str>),
+    (today, without_result): (Date, &[&str]),
     wishes: &mut Wishes,
 ) {
     ui.spacing_mut().item_spacing.y = 5.0;
@@ -228,14 +228,14 @@ fn entries_ui(
     tags: &[&str],
     results: &Results,
     view: &mut ViewState,
-    (settings, today, without_result): (&PlantSettings, Date, Option<&str>),
+    (settings, today, without_result): (&PlantSettings, Date, &[&str]),
     wishes: &mut Wishes,
 ) {
     let id = |tag: &str| Id::unique(("press", tag));
     for (place, tag) in tags.iter().enumerate() {
         let Some(result) = results.press(tag) else { continue };
         let is_shown = !view.is_overview && view.press.as_deref() == Some(tag);
-        let is_without_result = without_result == Some(*tag);
+        let is_without_result = without_result.contains(tag);
         let entry = Entry { result, is_shown, is_without_result, unit: view.unit };
         let response = ui.push_id(id(tag), |ui| entry.ui(ui, settings, today)).inner;
         if response.clicked() {

@@ -62,7 +62,8 @@ pub fn status_ui(ui: &mut Ui, messages: &Messages, history: Option<&History>, gi
     ui.spacing_mut().item_spacing.y = 3.0;
     let faint = theme::colour(ui.ctx(), Role::Faint);
     ui.horizontal_top(|ui| {
-        ui.set_min_height(18.0);
+        ui.set_min_height(22.0);
+        ui.spacing_mut().interact_size.y = 20.0;
         ui.with_layout(Layout::right_to_left(Align::Min), |ui| {
             let state = state_words(messages, history, given);
             ui.label(RichText::new(state).size(13.0).color(theme::colour(ui.ctx(), Role::Ink)));

@@ -84,14 +84,14 @@ pub struct SheetDrafts {
 }
 
 impl SheetDrafts {
-    /// The sheets on which entries could not be taken, with their number. While there is one, no answer is given: what is typed
-    /// and what would be reckoned from are not the same.
-    pub fn refused(&self) -> Vec<(Sheet, usize)> {
-        let counts = [
+    /// What could not be taken, in words, by sheet. While there is anything, no answer is given: what is typed and what would be
+    /// reckoned from are not the same.
+    pub fn refused(&self) -> Vec<(Sheet, Vec<String>)> {
+        let words = [
             (Sheet::Press, self.press.refused()),
             (Sheet::StopTests, self.stop_tests.refused()),
             (Sheet::Safeguards, self.safeguards.refused()),
         ];
-        counts.into_iter().filter(|(_, count)| *count > 0).collect()
+        words.into_iter().filter(|(_, words)| !words.is_empty()).collect()
     }
 }

@@ -32,8 +32,8 @@ pub struct PressDrafts {
 }
 
 impl PressDrafts {
-    /// How many entries could not be taken.
-    pub fn refused(&self) -> usize {
+    /// What could not be taken, in words.
+    pub fn refused(&self) -> Vec<String> {
         self.fields.refused()
     }
 

@@ -15,7 +15,7 @@ use figure::Role;
 use crate::window::context::SheetContext;
 use crate::window::theme;
 use crate::window::widgets::{
-    Commit, Drafts, FieldKind, answer_badge, caption, card_ui, heading, step_table_ui, text_field,
+    Commit, Drafts, FieldKind, answer_badge, caption, card_ui, heading, no_result_badge, step_table_ui, text_field,
 };
 use crate::window::wishes::{Wish, Wishes};
 
@@ -28,8 +28,8 @@ pub struct SafeguardsDrafts {
 }
 
 impl SafeguardsDrafts {
-    /// How many entries could not be taken.
-    pub fn refused(&self) -> usize {
+    /// What could not be taken, in words.
+    pub fn refused(&self) -> Vec<String> {
         self.fields.refused()
     }
 }
@@ -91,7 +91,11 @@ fn field_id(cx: &SheetContext, index: usize, field: &str) -> Id {
 fn head_ui(ui: &mut Ui, card: &Card, drafts: &mut SafeguardsDrafts, wishes: &mut Wishes) {
     let (safeguard, assessment) = (card.safeguard(), card.assessment());
     ui.horizontal(|ui| {
-        answer_badge(ui, assessment.answer);
+        if card.cx.is_without_result {
+            no_result_badge(ui);
+        } else {
+            answer_badge(ui, assessment.answer);
+        }
         ui.add_space(6.0);
         if card.index == card.cx.safeguard {
             let kind = FieldKind::words("Name").bare().wide(200.0);
@@ -112,7 +116,8 @@ fn head_ui(ui: &mut Ui, card: &Card, drafts: &mut SafeguardsDrafts, wishes: &mut
         }
         caption(ui, safeguard.kind.words());
         if card.index != card.cx.safeguard {
-            if let Some(figures) = sentence::figures(assessment, card.cx.unit) {
+            let figures = sentence::figures(assessment, card.cx.unit).filter(|_| !card.cx.is_without_result);
+            if let Some(figures) = figures {
                 ui.label(figures);
             }
             if ui.button("Show").clicked() {
@@ -139,9 +144,15 @@ fn body_ui(ui: &mut Ui, card: &Card, drafts: &mut SafeguardsDrafts, wishes: &mut
         ui.vertical(|ui| {
             ui.set_width(430.0);
             measures::time_parts_ui(ui, card, &mut drafts.fields, wishes);
-            allowed_ui(ui, assessment);
+            if !cx.is_without_result {
+                allowed_ui(ui, assessment);
+            }
         });
     });
+    if cx.is_without_result {
+        caption(ui, "Worked steps and the other rule sets are shown again once every entry can be taken.");
+        return;
+    }
     for reason in &assessment.reasons {
         let colour = theme::colour(ui.ctx(), crate::window::app::answer_role(reason.answer));
         ui.horizontal_wrapped(|ui| {

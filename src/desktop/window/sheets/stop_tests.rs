@@ -40,9 +40,9 @@ pub struct StopTestsDrafts {
 }
 
 impl StopTestsDrafts {
-    /// How many entries could not be taken.
-    pub fn refused(&self) -> usize {
-        self.grid.refused_cells() + self.fields.refused()
+    /// What could not be taken, in words.
+    pub fn refused(&self) -> Vec<String> {
+        self.grid.refused_cells().into_iter().chain(self.fields.refused()).collect()
     }
 
     /// What was typed for another press, or before tests came or went, belongs to no field of this one.

@@ -41,10 +41,13 @@ impl Drafts {
         *self = Self::default();
     }
 
-    /// How many fields hold text that could not be taken, as the sheet was last drawn. A field that is no longer there, such as
-    /// one of a safeguard that was removed, does not count.
-    pub fn refused(&self) -> usize {
-        self.texts.values().filter(|draft| draft.refusal.is_some() && draft.drawn == self.drawn).count()
+    /// What could not be taken, in words, as the sheet was last drawn. A field that is no longer there, such as one of a safeguard
+    /// that was removed, does not count.
+    pub fn refused(&self) -> Vec<String> {
+        let drawn = self.texts.values().filter(|draft| draft.drawn == self.drawn);
+        let mut words: Vec<String> = drawn.filter_map(|draft| Some(draft.refusal.as_ref()?.to_string())).collect();
+        words.sort_unstable();
+        words
     }
 
     /// Puts the cursor into a field as soon as it is drawn.
@@ -173,7 +176,7 @@ pub fn field_ui<T>(
                 edit = edit.margin(egui::Margin::symmetric(3, 4));
             }
             if kind.is_figure {
-                edit = edit.align(egui::Align2::RIGHT_CENTER).margin(FIGURE_MARGIN);
+                edit = edit.align(egui::Align2::RIGHT_CENTER).margin(figure_margin(kind.width));
             }
             if is_refused {
                 edit = edit.text_color(theme::colour(ui.ctx(), Role::Short));
@@ -217,8 +220,10 @@ pub fn field_ui<T>(
     settle(ui, id, &response, text, committed, drafts, read)
 }
 
-/// Room beside the digits; a narrow cell must show all of them.
-const FIGURE_MARGIN: Margin = Margin::symmetric(3, 2);
+/// Room beside the digits; a narrow cell needs it all for them.
+fn figure_margin(width: f32) -> Margin {
+    Margin::symmetric(if width < 60.0 { 3 } else { 7 }, 2)
+}
 
 /// What typing, Enter, Tab, Escape and leaving make of the field.
 fn settle<T>(

@@ -31,6 +31,17 @@ pub fn answer_badge(ui: &mut Ui, answer: Answer) -> Response {
     .inner
 }
 
+/// In place of an answer while an entry cannot be taken.
+pub fn no_result_badge(ui: &mut Ui) -> Response {
+    ui.horizontal(|ui| {
+        ui.spacing_mut().item_spacing.x = 5.0;
+        mark_ui(ui, Answer::Unproven, 11.0);
+        let colour = theme::colour(ui.ctx(), Role::Unproven);
+        ui.label(RichText::new("No result").font(theme::strong(14.0)).color(colour))
+    })
+    .inner
+}
+
 /// A framed part of a sheet.
 pub fn card_ui<R>(ui: &mut Ui, add: impl FnOnce(&mut Ui) -> R) -> R {
     let visuals = &ui.style().visuals;

@@ -9,5 +9,7 @@ pub use choice::{Named, bare_choice_ui, choice_ui, segments_ui, switch_ui};
 pub use field::{
     Commit, Drafts, FieldKind, Moved, date_field, field_ui, length_field, moment_field, number_field, text_field,
 };
-pub use layout::{answer_badge, caption, card_ui, empty_state, heading, pairs_row, refusal_line, shortcut_button};
+pub use layout::{
+    answer_badge, caption, card_ui, empty_state, heading, no_result_badge, pairs_row, refusal_line, shortcut_button,
+};
 pub use step_table::step_table_ui;

@@ -50,8 +50,8 @@ impl GridDrafts {
         self.block.clear();
     }
 
-    /// How many cells hold text that could not be taken.
-    pub fn refused_cells(&self) -> usize {
+    /// What could not be taken in the cells, in words.
+    pub fn refused_cells(&self) -> Vec<String> {
         self.cells.refused()
     }
 
