@@ -253,9 +253,13 @@ pub fn save_press_over(
             None
         }
     };
-    save_press(folder, press, previous_tag, &mut as_it_is)?;
-    *known = as_it_is;
-    Ok(theirs)
+    let before = as_it_is.clone();
+    let saved = save_press(folder, press, previous_tag, &mut as_it_is);
+    // Where the new file stands and only the old one could not be removed, that much is known even so.
+    if saved.is_ok() || as_it_is != before {
+        *known = as_it_is;
+    }
+    saved.map(|()| theirs)
 }
 
 /// The comment lines that somebody wrote at the head of a file; they stay when the file is written again.
