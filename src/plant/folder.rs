@@ -2,13 +2,15 @@
 
 use std::collections::BTreeMap;
 use std::fs;
+use std::io::ErrorKind;
 use std::path::{Path, PathBuf};
 
 use calc::plant_settings::PlantSettings;
 use calc::press::{Press, check_tag};
 
 use crate::read::{FileRefusal, LARGEST_FILE, PlantRefusal, read_text};
-use crate::{v1, write_whole};
+use crate::v1;
+use crate::write::{write_new, write_whole};
 
 const SETTINGS: &str = "plant.ron";
 const PRESSES: &str = "presses";
@@ -78,14 +80,19 @@ pub fn open(folder: &Path) -> Result<Plant, PlantRefusal> {
 /// A press file outside the `presses` folder of a plant, or one of the two files unreadable.
 pub fn open_press_file(path: &Path) -> Result<(PlantSettings, Press), PlantRefusal> {
     let (press, _) = read_press(path)?;
+    Ok((open_settings(&plant_of(path)?)?.0, press))
+}
+
+/// The plant folder that a press file belongs to.
+fn plant_of(path: &Path) -> Result<PathBuf, PlantRefusal> {
     let absolute = std::path::absolute(path).unwrap_or_else(|_| path.into());
-    let folder = absolute.parent().and_then(Path::parent).filter(|folder| folder.join(SETTINGS).is_file()).ok_or_else(|| {
+    let folder = absolute.parent().and_then(Path::parent).filter(|folder| folder.join(SETTINGS).is_file());
+    folder.map(Path::to_owned).ok_or_else(|| {
         PlantRefusal::Folder(format!(
             "{} belongs to no plant: there is no {SETTINGS} in the folder above its own. Keep press files in PLANT/{PRESSES}/.",
             path.display()
         ))
-    })?;
-    Ok((open_settings(folder)?.0, press))
+    })
 }
 
 /// Changes one press file on disk: reads it, lets `edit` change the press, and saves it whole or not at all.
@@ -96,14 +103,14 @@ pub fn edit_press_file(
     path: &Path,
     edit: impl FnOnce(&mut Press) -> Result<(), String>,
 ) -> Result<Press, PlantRefusal> {
-    let (_, mut press) = open_press_file(path)?;
-    let text = read_text(path)?;
+    // Press and text come from one reading: a change by somebody else after it is noticed when the press is saved.
+    let (mut press, text) = read_press(path)?;
+    let folder = plant_of(path)?;
+    open_settings(&folder)?;
     let tag = press.tag.clone();
     edit(&mut press).map_err(PlantRefusal::Folder)?;
-    let absolute = std::path::absolute(path).unwrap_or_else(|_| path.into());
-    let folder = absolute.parent().and_then(Path::parent).unwrap_or(Path::new("."));
-    let mut known = Known { settings: None, presses: BTreeMap::from([(tag, text)]) };
-    save_press(folder, &press, None, &mut known)?;
+    let mut known = Known { settings: None, presses: BTreeMap::from([(tag.clone(), text)]) };
+    save_press(&folder, &press, Some(&tag), &mut known)?;
     Ok(press)
 }
 
@@ -113,11 +120,18 @@ pub fn edit_press_file(
 /// A folder that already holds a plant or anything else, or cannot be written.
 pub fn create(folder: &Path, settings: &PlantSettings) -> Result<Known, PlantRefusal> {
     let refuse = |why: String| PlantRefusal::Folder(why);
-    if folder.join(SETTINGS).exists() {
+    if is_there(folder)? && !folder.is_dir() {
+        return Err(refuse(format!("{} is no folder. Choose an empty folder or a new name.", folder.display())));
+    }
+    if is_there(&folder.join(SETTINGS))? {
         return Err(refuse(format!("{} already holds a plant. Open it instead.", folder.display())));
     }
-    if folder.is_dir() && fs::read_dir(folder).is_ok_and(|mut entries| entries.next().is_some()) {
-        return Err(refuse(format!("{} is not empty. Choose an empty folder or a new name.", folder.display())));
+    if is_there(folder)? {
+        let mut entries = fs::read_dir(folder)
+            .map_err(|error| refuse(format!("The folder {} cannot be read: {error}.", folder.display())))?;
+        if entries.next().is_some() {
+            return Err(refuse(format!("{} is not empty. Choose an empty folder or a new name.", folder.display())));
+        }
     }
     fs::create_dir_all(folder.join(PRESSES))
         .map_err(|error| refuse(format!("The folder {} cannot be made: {error}.", folder.display())))?;
@@ -138,7 +152,8 @@ pub fn save_settings(folder: &Path, settings: &PlantSettings, known: &mut Known)
         return Err(PlantRefusal::Folder(why.into()));
     }
     check_unchanged(&path, known.settings.as_deref())?;
-    write_whole(&path, text.as_bytes())?;
+    let write = if known.settings.is_some() { write_whole } else { write_new };
+    write(&path, text.as_bytes())?;
     known.settings = Some(text);
     Ok(())
 }
@@ -159,8 +174,8 @@ pub fn save_press(
     fs::create_dir_all(&presses)
         .map_err(|error| PlantRefusal::Folder(format!("The folder {} cannot be made: {error}.", presses.display())))?;
     let path = press_path(folder, &press.tag);
-    let known_text = known.presses.get(previous_tag.unwrap_or(&press.tag)).map(String::as_str);
-    let text = head_comment(known_text) + &v1::press_to_text(press);
+    let known_text = previous_tag.and_then(|tag| known.presses.get(tag)).or_else(|| known.presses.get(&press.tag));
+    let text = head_comment(known_text.map(String::as_str)) + &v1::press_to_text(press);
     if text.len() as u64 > LARGEST_FILE {
         return Err(PlantRefusal::Folder(format!(
             "The file of press {} would be {} bytes long; at most {LARGEST_FILE} are read again. Nothing was changed.",
@@ -183,7 +198,7 @@ pub fn save_press(
     // A tag that is no longer known was moved away by an earlier save.
     let moved_from = previous_tag.filter(|tag| *tag != press.tag && known.presses.contains_key(*tag));
     if let Some(tag) = moved_from {
-        if path.exists() {
+        if is_there(&path)? {
             return Err(PlantRefusal::Folder(format!(
                 "Press {tag} cannot be saved as {}: {} is the file of another press. Nothing was changed; choose another tag, or save again once that press has left it.",
                 press.tag,
@@ -192,7 +207,8 @@ pub fn save_press(
         }
         check_unchanged(&press_path(folder, tag), known.presses.get(tag).map(String::as_str))?;
     }
-    write_whole(&path, text.as_bytes())?;
+    let write = if known.presses.contains_key(&press.tag) { write_whole } else { write_new };
+    write(&path, text.as_bytes())?;
     known.presses.insert(press.tag.clone(), text);
     if let Some(tag) = moved_from {
         known.presses.remove(tag);
@@ -208,6 +224,44 @@ pub fn save_press(
     Ok(())
 }
 
+/// Saves one press over what stands in its file by now, for somebody who was told by [`save_press`] that it has changed and wants
+/// it so. Gives back the text that went, `None` where the file had gone.
+///
+/// # Errors
+/// As [`save_press`], except for a change by somebody else. A file that cannot be read is not replaced, nor is one of another press.
+pub fn save_press_over(
+    folder: &Path,
+    press: &Press,
+    previous_tag: Option<&str>,
+    known: &mut Known,
+) -> Result<Option<String>, PlantRefusal> {
+    let tag = previous_tag.filter(|tag| known.presses.contains_key(*tag)).unwrap_or(&press.tag);
+    if !known.presses.contains_key(tag) {
+        // What was never read is another press, whatever its file is called.
+        return save_press(folder, press, previous_tag, known).map(|()| None);
+    }
+    let path = press_path(folder, tag);
+    let theirs = if is_there(&path)? { Some(read_press(&path)?.1) } else { None };
+    let mut as_it_is = known.clone();
+    let previous_tag = match &theirs {
+        Some(text) => {
+            as_it_is.presses.insert(tag.to_owned(), text.clone());
+            previous_tag
+        }
+        None => {
+            as_it_is.presses.remove(tag);
+            None
+        }
+    };
+    let before = as_it_is.clone();
+    let saved = save_press(folder, press, previous_tag, &mut as_it_is);
+    // Where the new file stands and only the old one could not be removed, that much is known even so.
+    if saved.is_ok() || as_it_is != before {
+        *known = as_it_is;
+    }
+    saved.map(|()| theirs)
+}
+
 /// The comment lines that somebody wrote at the head of a file; they stay when the file is written again.
 fn head_comment(text: Option<&str>) -> String {
     let lines = text.unwrap_or_default().lines();
@@ -218,8 +272,18 @@ fn press_path(folder: &Path, tag: &str) -> PathBuf {
     folder.join(PRESSES).join(format!("{tag}.ron"))
 }
 
+/// Whether anything stands at a path, be it a link to nowhere. What cannot be looked at is not taken for absent: a share that
+/// is away must not pass for an empty plant.
+fn is_there(path: &Path) -> Result<bool, PlantRefusal> {
+    match fs::symlink_metadata(path) {
+        Ok(_) => Ok(true),
+        Err(error) if error.kind() == ErrorKind::NotFound => Ok(false),
+        Err(error) => Err(PlantRefusal::Folder(format!("{} cannot be looked at: {error}.", path.display()))),
+    }
+}
+
 fn check_unchanged(path: &Path, known: Option<&str>) -> Result<(), PlantRefusal> {
-    let now = if path.exists() { Some(read_text(path)?) } else { None };
+    let now = if is_there(path)? { Some(read_text(path)?) } else { None };
     if now.as_deref() == known {
         return Ok(());
     }
@@ -240,7 +304,7 @@ fn check_unchanged(path: &Path, known: Option<&str>) -> Result<(), PlantRefusal>
 
 fn open_settings(folder: &Path) -> Result<(PlantSettings, String), PlantRefusal> {
     let path = folder.join(SETTINGS);
-    if !path.exists() {
+    if !is_there(&path)? {
         return Err(PlantRefusal::Folder(format!("{} is no plant folder: it holds no {SETTINGS}.", folder.display())));
     }
     let text = read_text(&path)?;
@@ -249,7 +313,7 @@ fn open_settings(folder: &Path) -> Result<(PlantSettings, String), PlantRefusal>
 
 fn press_paths(folder: &Path) -> Result<Vec<PathBuf>, PlantRefusal> {
     let presses = folder.join(PRESSES);
-    if !presses.exists() {
+    if !is_there(&presses)? {
         return Ok(Vec::new());
     }
     let refuse = |error: std::io::Error| {
@@ -272,7 +336,7 @@ fn read_press(path: &Path) -> Result<(Press, String), FileRefusal> {
     let press = v1::press_from_text(path, &text)?;
     if path.file_stem().is_none_or(|stem| stem != press.tag.as_str()) {
         let why = format!("The file holds the press {:?}; a press file bears the tag of its press.", press.tag);
-        return Err(FileRefusal::whole(path, why));
+        return Err(FileRefusal::of_field(path, "tag", why));
     }
     Ok((press, text))
 }

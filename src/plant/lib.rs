@@ -7,9 +7,9 @@
 //! ```
 //!
 //! Files are RON text with a version read first. The stored shape is apart from the meaning: structs of a file version refuse
-//! unknown fields and every number outside its limit, with line, column and field, and are turned by hand into the checked
+//! unknown fields and every number outside its limit, all of them with line, column and field, and are turned by hand into the checked
 //! types of `calc`. An unreadable file never becomes an empty press; it is listed with its error and left untouched. Saves are
-//! whole or not at all, and never over somebody else's change.
+//! whole or not at all, and never unasked over somebody else's change.
 
 mod comma;
 mod folder;
@@ -22,7 +22,8 @@ mod wording;
 mod write;
 
 pub use folder::{
-    Known, Plant, StoredPress, create, edit_press_file, open, open_press_file, save_press, save_settings,
+    Known, Plant, StoredPress, create, edit_press_file, open, open_press_file, save_press, save_press_over,
+    save_settings,
 };
 pub use read::{FileRefusal, PlantRefusal};
 pub use readings_csv::{RowRefusal, export_readings, import_readings};

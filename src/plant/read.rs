@@ -1,5 +1,6 @@
 //! Reading a file with care: its size first, then its text, then its version, then its shape.
 
+use std::cell::Cell;
 use std::fmt;
 use std::fs::{self, File};
 use std::io::Read;
@@ -15,7 +16,10 @@ use crate::wording::words;
 /// Larger files are refused unread: a press with thirty years of monthly readings stays under 1 MB.
 pub const LARGEST_FILE: u64 = 8 * 1024 * 1024;
 
-/// Why a file could not be read.
+/// At most so many refusals of one file are told; whoever has that many looks at the file as a whole.
+const MOST_TOLD: usize = 20;
+
+/// Why a file could not be read: the first fault in it, and those behind it.
 #[derive(Clone, PartialEq, Eq, Debug)]
 pub struct FileRefusal {
     /// The file.
@@ -26,25 +30,33 @@ pub struct FileRefusal {
     pub field: Option<String>,
     /// What is wrong, in words.
     pub why: String,
+    /// What else is wrong in the same file, in its order. Behind a fault of the form nothing more can be found.
+    pub further: Vec<FileRefusal>,
 }
 
 impl FileRefusal {
     /// A refusal of the file as a whole.
     pub fn whole(path: &Path, why: impl Into<String>) -> Self {
-        Self { path: path.into(), place: None, field: None, why: why.into() }
+        Self { path: path.into(), place: None, field: None, why: why.into(), further: Vec::new() }
+    }
+
+    /// A refusal of one field, whose place is not known.
+    pub fn of_field(path: &Path, field: impl Into<String>, why: impl Into<String>) -> Self {
+        Self { field: Some(field.into()), ..Self::whole(path, why) }
     }
 }
 
 impl fmt::Display for FileRefusal {
+    /// One line for each fault.
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
-        if let Some((line, column)) = self.place {
-            write!(f, "Line {line}, column {column}")?;
-            if let Some(field) = &self.field {
-                write!(f, ", {field}")?;
-            }
-            write!(f, ": ")?;
+        match (self.place, &self.field) {
+            (Some((line, column)), Some(field)) => write!(f, "Line {line}, column {column}, {field}: ")?,
+            (Some((line, column)), None) => write!(f, "Line {line}, column {column}: ")?,
+            (None, Some(field)) => write!(f, "{field}: ")?,
+            (None, None) => {}
         }
-        write!(f, "{} ({})", self.why, self.path.display())
+        write!(f, "{} ({})", self.why, self.path.display())?;
+        self.further.iter().try_for_each(|fault| write!(f, "\n{fault}"))
     }
 }
 
@@ -126,13 +138,45 @@ fn refuse_decimal_comma(path: &Path, text: &str) -> Result<(), FileRefusal> {
     Err(FileRefusal { place: Some(place), ..FileRefusal::whole(path, why) })
 }
 
-/// Reads one shape from a text; the refusal names line, column and field.
+thread_local! {
+    /// How many values that cannot be taken are still let pass, so that the next one behind them is found. Only ever above zero
+    /// while [`gather`] reads a file that is refused already.
+    static LET_PASS: Cell<usize> = const { Cell::new(0) };
+}
+
+/// Whether a value that cannot be taken is let pass this once.
+pub fn is_let_pass() -> bool {
+    let left = LET_PASS.get();
+    LET_PASS.set(left.saturating_sub(1));
+    left > 0
+}
+
+/// Reads one shape from a text; the refusal names line, column and field, of every fault that can be found.
 pub fn parse<T: DeserializeOwned>(path: &Path, text: &str) -> Result<T, FileRefusal> {
-    if let Some(place) = comma_between_digits(text) {
-        let why =
-            "A comma stands between two digits. Write a point for decimals, and a blank behind the comma in a list.";
-        return Err(FileRefusal { place: Some(place), ..FileRefusal::whole(path, why) });
+    refuse_decimal_comma(path, text)?;
+    // Whatever went before: what is handed out has let nothing pass.
+    LET_PASS.set(0);
+    parse_once(path, text).map_err(|first| gather::<T>(path, text, first))
+}
+
+/// The faults behind the first one: the text is read again, each time with one more refused value let pass.
+fn gather<T: DeserializeOwned>(path: &Path, text: &str, mut first: FileRefusal) -> FileRefusal {
+    for let_pass in 1..=MOST_TOLD {
+        LET_PASS.set(let_pass);
+        let read = parse_once::<T>(path, text);
+        let are_all_found = LET_PASS.replace(0) > 0;
+        match read {
+            Err(next) if !are_all_found && let_pass < MOST_TOLD => first.further.push(next),
+            Err(_) if !are_all_found => {
+                first.further.push(FileRefusal::whole(path, "There is more; correct these first."));
+            }
+            _ => break,
+        }
     }
+    first
+}
+
+fn parse_once<T: DeserializeOwned>(path: &Path, text: &str) -> Result<T, FileRefusal> {
     let mut reader =
         ron::Deserializer::from_str_with_options(text, &options()).map_err(|error| at_place(path, &error, None))?;
     let read = serde_path_to_error::deserialize(&mut reader);
@@ -147,7 +191,7 @@ pub fn parse<T: DeserializeOwned>(path: &Path, text: &str) -> Result<T, FileRefu
 fn at_place(path: &Path, error: &ron::error::SpannedError, field: Option<String>) -> FileRefusal {
     let field = field.filter(|field| !matches!(field.as_str(), "." | "?" | ""));
     let start = error.span.start;
-    FileRefusal { path: path.into(), place: Some((start.line, start.col)), field, why: words(&error.code) }
+    FileRefusal { place: Some((start.line, start.col)), field, ..FileRefusal::whole(path, words(&error.code)) }
 }
 
 /// Optional fields are written without `Some(...)`.

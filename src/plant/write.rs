@@ -1,14 +1,35 @@
 //! Writing a file whole or not at all.
 
-use std::fs;
-use std::io::Write;
+use std::fs::{self, File};
+use std::io::{ErrorKind, Write};
 use std::path::Path;
+
+use tempfile::{NamedTempFile, PersistError};
 
 use crate::read::PlantRefusal;
 
 /// Writes `bytes` to `path` by way of a temporary file in the same folder: flushed, read back, then moved into place. On any
 /// failure the old file is as it was and the temporary file is gone.
 pub fn write_whole(path: &Path, bytes: &[u8]) -> Result<(), PlantRefusal> {
+    write(path, bytes, |file| file.persist(path))
+}
+
+/// The same for a file that is not there yet: one that somebody else has made meanwhile is not written over.
+pub fn write_new(path: &Path, bytes: &[u8]) -> Result<(), PlantRefusal> {
+    write(path, bytes, |file| {
+        file.persist_noclobber(path).or_else(|error| match error.error.kind() {
+            ErrorKind::AlreadyExists => Err(error),
+            // Some shares cannot move a file only where none is. There the caller's own look at the place has to do.
+            _ => error.file.persist(path),
+        })
+    })
+}
+
+fn write(
+    path: &Path,
+    bytes: &[u8],
+    put_in_place: impl FnOnce(NamedTempFile) -> Result<File, PersistError>,
+) -> Result<(), PlantRefusal> {
     let refuse = |what: &str, error: std::io::Error| {
         PlantRefusal::Folder(format!("{what}: {error}. Nothing was changed ({}).", path.display()))
     };
@@ -36,9 +57,9 @@ pub fn write_whole(path: &Path, bytes: &[u8]) -> Result<(), PlantRefusal> {
             .set_permissions(fs::Permissions::from_mode(mode))
             .map_err(|error| refuse("The file cannot be given its rights", error))?;
     }
-    file.persist(path).map_err(|error| refuse("The file cannot be moved into place", error.error))?;
+    put_in_place(file).map_err(|error| refuse("The file cannot be moved into place", error.error))?;
     // The move itself must survive a power cut; a folder that cannot be opened for that is no reason to fail the save.
-    if let Ok(folder) = fs::File::open(folder) {
+    if let Ok(folder) = File::open(folder) {
         let _ = folder.sync_all();
     }
     Ok(())

@@ -86,6 +86,7 @@ fn a_file_cut_within_a_letter_is_no_utf_8() {
 #[test]
 fn a_file_that_bears_another_name_than_its_press() {
     let refusal = refused_alone(text_of("E-110").as_bytes());
+    assert_eq!(refusal.field.as_deref(), Some("tag"));
     assert_eq!(refusal.why, "The file holds the press \"E-110\"; a press file bears the tag of its press.");
 }
 
@@ -206,4 +207,42 @@ fn one_press_opens_with_its_plant() {
     fs::copy(press_file(&folder, "E-109"), &path).unwrap();
     let Err(PlantRefusal::Folder(why)) = open_press_file(&path) else { panic!("a press without a plant") };
     assert!(why.contains("belongs to no plant"), "{why}");
+}
+
+#[cfg(unix)]
+#[test]
+fn what_cannot_be_looked_at_is_not_taken_for_absent() {
+    use std::os::unix::fs::symlink;
+    // A share that is away: the folder of presses is a link whose other end is not there. That is no empty plant.
+    let folder = plant_folder();
+    let presses = folder.path().join("presses");
+    fs::remove_dir_all(&presses).unwrap();
+    symlink(folder.path().join("share/presses"), &presses).unwrap();
+    let Err(PlantRefusal::Folder(why)) = open(folder.path()) else { panic!("a plant without its presses") };
+    assert!(why.contains("presses cannot be read"), "{why}");
+    // Settings that are there and cannot be opened; rights would not hold back an administrator, a link in a ring does.
+    let settings = folder.path().join("plant.ron");
+    fs::remove_file(&settings).unwrap();
+    symlink(&settings, &settings).unwrap();
+    let Err(PlantRefusal::File(refusal)) = open(folder.path()) else { panic!("settings that cannot be opened") };
+    assert!(refusal.why.starts_with("The file cannot be opened"), "{refusal}");
+}
+
+/// Rights bind nobody who runs this as root; then the folder opens, and the links above have shown the refusal.
+#[cfg(unix)]
+#[test]
+fn a_folder_without_rights_is_refused_in_words() {
+    use std::os::unix::fs::PermissionsExt;
+    let folder = plant_folder();
+    let presses = folder.path().join("presses");
+    let rights = |mode| fs::set_permissions(&presses, fs::Permissions::from_mode(mode)).unwrap();
+    rights(0o000);
+    let binds = fs::read_dir(&presses).is_err();
+    let opened = open(folder.path());
+    rights(0o755);
+    match opened {
+        Err(PlantRefusal::Folder(why)) if binds => assert!(why.contains("presses cannot be read"), "{why}"),
+        Ok(plant) if !binds => assert_eq!(plant.presses.len(), 14),
+        other => panic!("{other:?}"),
+    }
 }

@@ -152,6 +152,7 @@ fn two_safeguards_of_one_name() {
     let sample = SAMPLES.iter().find(|(name, _)| name.ends_with("E-101.ron")).unwrap().1;
     let refusal = read(&sample.replace("name: \"Two-hand control\"", "name: \"Front curtain\"")).unwrap_err();
     assert!(refusal.why.starts_with("Two safeguards are called \"Front curtain\"."), "{refusal}");
+    assert_eq!(refusal.field.as_deref(), Some("safeguards[1].name"));
 }
 
 #[test]
@@ -159,7 +160,9 @@ fn a_reading_without_any_setup() {
     let at = sample().find("  reference: (").unwrap();
     let end = at + sample()[at..].find("\n  ),\n").unwrap() + "\n  ),\n".len();
     let refusal = read(&format!("{}{}", &sample()[..at], &sample()[end..])).unwrap_err();
-    assert!(refusal.why.starts_with("readings[0] has no setup and the press no reference."), "{refusal}");
+    assert!(refusal.to_string().starts_with("readings[0]: The reading has no setup and the press no reference."));
+    let readings = read(sample()).unwrap().readings.len();
+    assert_eq!(refusal.further.len(), readings - 1, "every reading is told");
 }
 
 #[test]
@@ -231,4 +234,61 @@ fn a_file_cut_anywhere_is_refused_or_still_whole() {
             }
         }
     }
+}
+
+#[test]
+fn every_fault_of_a_file_is_told_with_its_place() {
+    let text = sample()
+        .replace("force_kn: 2000", "force_kn: 0.5")
+        .replace("heaviest_die_kg: 700", "heaviest_die_kg: -1")
+        .replacen("brake: \"cold\"", "brake: \"tepid\"", 1)
+        .replacen("stops_ms: [", "stops_ms: [0, 20000, ", 1)
+        .replace("kind: \"remark\"", "kind: \"rumour\"");
+    let refusal = read(&text).unwrap_err();
+    let told: Vec<_> = std::iter::once(&refusal).chain(&refusal.further).collect();
+    let fields: Vec<&str> = told.iter().map(|fault| fault.field.as_deref().unwrap()).collect();
+    let meant = [
+        "force_kn",
+        "heaviest_die_kg",
+        "stop_tests[0].condition.brake",
+        "stop_tests[0].stops_ms[0]",
+        "stop_tests[0].stops_ms[1]",
+        "events[0].kind",
+    ];
+    assert_eq!(fields, meant);
+    let stands = ["0.5", ": -1,", "\"tepid\"", "[0,", "20000,", "\"rumour\""];
+    for (fault, stands) in told.iter().zip(stands) {
+        let line = line_and_column(&text, text.find(stands).unwrap()).0;
+        assert_eq!(fault.place.unwrap().0, line, "{fault}");
+    }
+    let lines = refusal.to_string();
+    assert_eq!(lines.lines().count(), 6);
+    assert!(lines.lines().all(|line| line.starts_with("Line ") && line.ends_with("(E-110.ron)")), "{lines}");
+    // The search leaves nothing behind: what is out of its limit is refused in the next file too, and a sound one is read.
+    assert_eq!(read(&with("force_kn: 2000", "force_kn: 0.5").0).unwrap_err().further, []);
+    assert!(read(sample()).is_ok());
+}
+
+#[test]
+fn behind_a_fault_of_the_form_nothing_more_is_looked_for() {
+    let text =
+        sample().replace("force_kn: 2000", "force_kn: 0.5").replace("frame: straight_side", "fram: straight_side");
+    let refusal = read(&text).unwrap_err();
+    assert_eq!(refusal.field.as_deref(), Some("force_kn"));
+    assert_eq!(refusal.further.len(), 1);
+    assert!(refusal.further[0].why.starts_with("There is no field fram here."), "{refusal}");
+    assert_eq!(read(&text.replace("force_kn: 0.5", "force_kn: 2000")).unwrap_err().further, []);
+}
+
+#[test]
+fn endless_faults_are_told_up_to_twenty() {
+    let faults = "0, ".repeat(100_000);
+    let refusal = read(&with("stops_ms: [", &format!("stops_ms: [{faults}")).0).unwrap_err();
+    assert_eq!(refusal.further.len(), 20);
+    assert_eq!(refusal.further[18].field.as_deref(), Some("stop_tests[0].stops_ms[19]"));
+    assert_eq!(refusal.further[19].why, "There is more; correct these first.");
+    let twenty = "0, ".repeat(20);
+    let refusal = read(&with("stops_ms: [", &format!("stops_ms: [{twenty}")).0).unwrap_err();
+    assert_eq!(refusal.further.len(), 19);
+    assert_eq!(refusal.further[18].field.as_deref(), Some("stop_tests[0].stops_ms[19]"));
 }

@@ -5,7 +5,7 @@ use std::fs;
 use std::path::Path;
 
 use calc::press::Press;
-use plant::{Plant, PlantRefusal, copy_samples, create, open, save_press, save_settings};
+use plant::{Plant, PlantRefusal, copy_samples, create, open, save_press, save_press_over, save_settings};
 use tempfile::TempDir;
 
 fn sample_plant() -> (TempDir, Plant) {
@@ -273,4 +273,88 @@ fn a_comment_at_the_head_of_a_file_stays() {
     let text = std::fs::read_to_string(&path).unwrap();
     assert_eq!(text.lines().next(), Some(head.as_str()));
     assert!(text.contains("elsewhere"));
+}
+
+#[test]
+fn a_comment_at_the_head_stays_where_the_old_tag_is_told_again() {
+    // A save of several files that was refused for one of them is repeated for all, with the tags they were read under.
+    let (folder, mut plant) = sample_plant();
+    let mut renamed = Press { tag: "E-300".into(), ..press(&plant, "E-108") };
+    let head = fs::read_to_string(folder.path().join("presses/E-108.ron")).unwrap().lines().next().unwrap().to_owned();
+    for location in ["Hall 3", "Hall 4"] {
+        renamed.location = location.into();
+        save_press(folder.path(), &renamed, Some("E-108"), &mut plant.known).unwrap();
+        let text = fs::read_to_string(folder.path().join("presses/E-300.ron")).unwrap();
+        assert_eq!(text.lines().next(), Some(head.as_str()), "{location}");
+    }
+}
+
+#[test]
+fn an_edit_does_not_write_over_a_change_made_while_it_was_made() {
+    let (folder, _) = sample_plant();
+    let path = folder.path().join("presses/E-108.ron");
+    let theirs = fs::read_to_string(&path).unwrap().replace("Hall 1", "Hall 9");
+    let refusal = plant::edit_press_file(&path, |press| {
+        fs::write(&path, &theirs).unwrap();
+        press.location = "Hall 3".into();
+        Ok(())
+    });
+    assert!(refusal.unwrap_err().to_string().contains("has been changed by somebody else"));
+    assert_eq!(fs::read_to_string(&path).unwrap(), theirs);
+    // An edit that gives the press another tag moves its file.
+    plant::edit_press_file(&path, |press| {
+        press.tag = "E-300".into();
+        Ok(())
+    })
+    .unwrap();
+    assert!(!path.exists() && folder.path().join("presses/E-300.ron").exists());
+}
+
+#[test]
+fn who_was_told_of_a_change_can_save_over_it_and_gets_the_text_that_went() {
+    let (folder, mut plant) = sample_plant();
+    let path = folder.path().join("presses/E-108.ron");
+    let mut mine = press(&plant, "E-108");
+    mine.location = "Hall 3".into();
+    let theirs = fs::read_to_string(&path).unwrap().replace("Hall 1", "Hall 9");
+    fs::write(&path, &theirs).unwrap();
+    assert!(save_press(folder.path(), &mine, Some("E-108"), &mut plant.known).is_err());
+    let went = save_press_over(folder.path(), &mine, Some("E-108"), &mut plant.known).unwrap();
+    assert_eq!(went, Some(theirs.clone()));
+    let again = open(folder.path()).unwrap();
+    assert_eq!((press(&again, "E-108"), &again.known), (mine.clone(), &plant.known));
+    // Under a new tag the changed file goes as well, and its text comes back.
+    fs::write(&path, &theirs).unwrap();
+    let renamed = Press { tag: "E-300".into(), ..mine.clone() };
+    assert!(save_press(folder.path(), &renamed, Some("E-108"), &mut plant.known).is_err());
+    assert_eq!(save_press_over(folder.path(), &renamed, Some("E-108"), &mut plant.known).unwrap(), Some(theirs));
+    assert!(!path.exists());
+    // A file that has gone is made again.
+    let path = folder.path().join("presses/E-300.ron");
+    fs::remove_file(&path).unwrap();
+    assert!(save_press(folder.path(), &renamed, Some("E-300"), &mut plant.known).is_err());
+    assert_eq!(save_press_over(folder.path(), &renamed, Some("E-300"), &mut plant.known).unwrap(), None);
+    let again = open(folder.path()).unwrap();
+    assert_eq!((press(&again, "E-300"), &again.known), (renamed, &plant.known));
+}
+
+#[test]
+fn even_asked_nothing_is_saved_over_another_press_or_an_unreadable_file() {
+    let (folder, mut plant) = sample_plant();
+    let mine = press(&plant, "E-108");
+    let onto_another = Press { tag: "E-109".into(), ..mine.clone() };
+    refused_unchanged(folder.path(), "is the file of another press", || {
+        save_press_over(folder.path(), &onto_another, Some("E-108"), &mut plant.known).map(|_| ())
+    });
+    let theirs = Press { tag: "E-200".into(), ..mine.clone() };
+    fs::write(folder.path().join("presses/E-200.ron"), plant::v1::press_to_text(&theirs)).unwrap();
+    refused_unchanged(folder.path(), "already exists and was not read by this program", || {
+        save_press_over(folder.path(), &theirs, None, &mut plant.known).map(|_| ())
+    });
+    fs::write(folder.path().join("presses/E-108.ron"), "(version: 2, tag: \"E-108\")").unwrap();
+    let known = plant.known.clone();
+    refused_unchanged(folder.path(), "written by a newer program", || {
+        save_press_over(folder.path(), &mine, Some("E-108"), &mut plant.known).map(|_| ())
+    });
+    assert_eq!(plant.known, known, "what was refused is still not known");
 }

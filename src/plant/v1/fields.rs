@@ -1,11 +1,21 @@
 //! Numbers, dates and names as files hold them: each is checked while it is read, so that a refusal knows its line and column.
 
+use std::fmt::Display;
+
 use calc::calendar::{Moment, parse_date};
 use calc::limits::{self, Limit};
 use calc::press::check_tag;
-use jiff::civil::Date;
+use jiff::civil::{Date, date};
 use serde::de::Error;
 use serde::{Deserialize, Deserializer, Serialize, Serializer};
+
+use crate::read::is_let_pass;
+
+/// Refuses a value that can be read but not taken. While further refusals of the same file are looked for, `stand_in` takes its
+/// place; what is read then is thrown away.
+fn refuse<T, E: Error>(why: impl Display, stand_in: T) -> Result<T, E> {
+    if is_let_pass() { Ok(stand_in) } else { Err(E::custom(why)) }
+}
 
 /// Writes a whole number without a point, so that `182` stays `182`.
 fn write_thousandths<S: Serializer>(count: i64, serializer: S) -> Result<S::Ok, S::Error> {
@@ -35,7 +45,7 @@ macro_rules! numbers {
         impl<'de> Deserialize<'de> for $name {
             fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
                 let value = f64::deserialize(deserializer)?;
-                Self::LIMIT.take_f64(value).map(Self).map_err(D::Error::custom)
+                Self::LIMIT.take_f64(value).map(Self).or_else(|why| refuse(why, Self(Self::LIMIT.least)))
             }
         }
     )*};
@@ -125,8 +135,10 @@ macro_rules! counts {
         impl<'de> Deserialize<'de> for $name {
             fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
                 let count = u32::deserialize(deserializer)?;
-                $limit.take(i64::from(count) * 1000).map_err(D::Error::custom)?;
-                Ok(Self(count))
+                match $limit.take(i64::from(count) * 1000) {
+                    Ok(_) => Ok(Self(count)),
+                    Err(why) => refuse(why, Self(count)),
+                }
             }
         }
     )*};
@@ -141,6 +153,9 @@ counts! {
     Share: limits::WARNING_SHARE;
 }
 
+/// Stands in for a day that was refused.
+const FIRST_DAY: Date = date(1950, 1, 1);
+
 /// A day, with or without a time of day.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
 pub struct At(pub Moment);
@@ -153,7 +168,8 @@ impl Serialize for At {
 
 impl<'de> Deserialize<'de> for At {
     fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
-        Moment::parse("Date", &String::deserialize(deserializer)?).map(Self).map_err(D::Error::custom)
+        let text = String::deserialize(deserializer)?;
+        Moment::parse("Date", &text).map(Self).or_else(|why| refuse(why, Self(Moment { date: FIRST_DAY, time: None })))
     }
 }
 
@@ -169,7 +185,8 @@ impl Serialize for Day {
 
 impl<'de> Deserialize<'de> for Day {
     fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
-        parse_date("Date", &String::deserialize(deserializer)?).map(Self).map_err(D::Error::custom)
+        let text = String::deserialize(deserializer)?;
+        parse_date("Date", &text).map(Self).or_else(|why| refuse(why, Self(FIRST_DAY)))
     }
 }
 
@@ -186,8 +203,10 @@ impl Serialize for Tag {
 impl<'de> Deserialize<'de> for Tag {
     fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
         let tag = String::deserialize(deserializer)?;
-        check_tag(&tag).map_err(D::Error::custom)?;
-        Ok(Self(tag))
+        match check_tag(&tag) {
+            Ok(()) => Ok(Self(tag)),
+            Err(why) => refuse(why, Self(tag)),
+        }
     }
 }
 
@@ -231,9 +250,13 @@ impl<T: Choice> Serialize for Named<T> {
 impl<'de, T: Choice> Deserialize<'de> for Named<T> {
     fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
         let name = String::deserialize(deserializer)?;
-        T::EVERY.iter().copied().find(|choice| choice.name() == name).map(Self).ok_or_else(|| {
-            let names: Vec<&str> = T::EVERY.iter().map(|choice| choice.name()).collect();
-            D::Error::custom(format!("{name:?} is not known here; it must be one of {}", names.join(", ")))
-        })
+        T::EVERY.iter().copied().find(|choice| choice.name() == name).map(Self).map_or_else(
+            || {
+                let names: Vec<&str> = T::EVERY.iter().map(|choice| choice.name()).collect();
+                let why = format!("{name:?} is not known here; it must be one of {}", names.join(", "));
+                refuse(why, Self(T::EVERY[0]))
+            },
+            Ok,
+        )
     }
 }

@@ -1,5 +1,7 @@
 //! From the stored shape to the checked types of `calc` and back, by hand.
 
+use std::collections::BTreeSet;
+
 use calc::plant_settings::PlantSettings;
 use calc::press::{self, Press};
 use calc::reading;
@@ -44,20 +46,27 @@ pub(super) fn file_of_settings(settings: &PlantSettings) -> PlantFile {
     }
 }
 
-/// What a file asks for that cannot be: in words.
-pub(super) fn press_of(file: PressFile) -> Result<Press, String> {
-    let mut names: Vec<&str> = file.safeguards.iter().map(|safeguard| safeguard.name.as_str()).collect();
-    names.sort_unstable();
-    if let Some(twice) = names.windows(2).find(|pair| pair[0] == pair[1]) {
-        return Err(format!("Two safeguards are called {:?}. Give each its own name.", twice[0]));
+/// A field, and what is wrong with it in words.
+pub(super) type Fault = (String, String);
+
+/// The press, or everything that the file asks for and that cannot be.
+pub(super) fn press_of(file: PressFile) -> Result<Press, Vec<Fault>> {
+    let mut faults = Vec::new();
+    let mut names = BTreeSet::new();
+    for (index, safeguard) in file.safeguards.iter().enumerate() {
+        if !names.insert(safeguard.name.as_str()) {
+            let why = format!("Two safeguards are called {:?}. Give each its own name.", safeguard.name);
+            faults.push((format!("safeguards[{index}].name"), why));
+        }
     }
     let reference = file.reference.map(setup_of);
     let mut readings = Vec::new();
     for (index, stored) in file.readings.into_iter().enumerate() {
-        let setup = stored.setup.map(setup_of).or_else(|| reference.clone());
-        let setup = setup.ok_or_else(|| {
-            format!("readings[{index}] has no setup and the press no reference. Give one of the two.")
-        })?;
+        let Some(setup) = stored.setup.map(setup_of).or_else(|| reference.clone()) else {
+            let why = "The reading has no setup and the press no reference. Give one of the two.";
+            faults.push((format!("readings[{index}]"), why.into()));
+            continue;
+        };
         readings.push(reading::Reading {
             at: stored.at.0,
             by: stored.by,
@@ -65,6 +74,9 @@ pub(super) fn press_of(file: PressFile) -> Result<Press, String> {
             instrument: instrument_of(stored.instrument),
             stops: times(&stored.stops_ms),
         });
+    }
+    if !faults.is_empty() {
+        return Err(faults);
     }
     Ok(Press {
         tag: file.tag.0,

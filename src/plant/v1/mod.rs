@@ -22,7 +22,11 @@ use meaning::{VERSION, file_of_press, file_of_settings, press_of, settings_of};
 /// A text of another version, of another shape, or with a number outside its limit; with line, column and field.
 pub fn press_from_text(path: &Path, text: &str) -> Result<Press, FileRefusal> {
     check_version(path, text)?;
-    press_of(parse(path, text)?).map_err(|why| FileRefusal::whole(path, why))
+    press_of(parse(path, text)?).map_err(|faults| {
+        let mut faults = faults.into_iter().map(|(field, why)| FileRefusal::of_field(path, field, why));
+        let first = faults.next().expect("a press is refused for at least one fault");
+        FileRefusal { further: faults.collect(), ..first }
+    })
 }
 
 /// Writes a press as the text of its file: the same press, the same bytes.
@@ -56,7 +60,7 @@ fn check_version(path: &Path, text: &str) -> Result<(), FileRefusal> {
     } else {
         format!("The file has version {version}; the oldest that ever was is {VERSION}. Write version: {VERSION}.")
     };
-    Err(FileRefusal::whole(path, why))
+    Err(FileRefusal::of_field(path, "version", why))
 }
 
 fn to_text(shape: &impl Serialize) -> String {
