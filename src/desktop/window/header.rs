@@ -14,9 +14,6 @@ use super::widgets::{empty_state, shortcut_button};
 use super::wishes::{Wish, Wishes};
 use crate::document::History;
 
-/// A button for a command and what it asks for.
-type CommandButton = (Command, fn() -> Wish);
-
 /// Height of the strip, kept where there is none, so that the sheet below does not jump when the first stop is typed.
 const STRIP_MM: f32 = 22.5;
 
@@ -165,14 +162,18 @@ pub fn nothing_shown_ui(ui: &mut Ui, history: Option<&History>, wishes: &mut Wis
     };
     ui.add_space((ui.available_height() * 0.25).max(0.0));
     empty_state(ui, title, what);
-    let commands: &[CommandButton] = match history {
-        None => &[(Command::OpenPlant, || Wish::OpenPlant), (Command::NewPlant, || Wish::NewPlant)],
-        Some(_) => &[(Command::NewPress, || Wish::NewPress)],
+    let commands: &[Command] = match history {
+        None => &[Command::OpenPlant, Command::NewPlant],
+        Some(_) => &[Command::NewPress],
     };
-    for (command, wish) in commands {
+    for command in commands {
         ui.vertical_centered(|ui| {
             if shortcut_button(ui, command.name(), &command.shortcut(), true).clicked() {
-                wishes.push(wish());
+                wishes.push(match command {
+                    Command::OpenPlant => Wish::OpenPlant,
+                    Command::NewPlant => Wish::NewPlant,
+                    _ => Wish::NewPress,
+                });
             }
         });
     }
