@@ -366,3 +366,18 @@ fn a_message_moves_nothing_on_the_sheet() {
     assert!(window.shows("Saved to"));
     assert_eq!(window.harness.get_by_role_and_label(egui::Role::TextInput, "Serial number").rect(), place);
 }
+
+#[test]
+fn text_that_is_no_part_of_the_plant_has_an_undo_of_its_own() {
+    let mut window = three();
+    window.ctrl(Key::Num1);
+    window.fill("Monitor setting", "200");
+    window.key(Key::Enter);
+    window.ctrl(Key::F);
+    window.type_in("P-1");
+    window.ctrl(Key::Z);
+    assert!(is_dirty(&window));
+    window.ctrl(Key::Num1);
+    window.ctrl(Key::Z);
+    assert!(!is_dirty(&window));
+}

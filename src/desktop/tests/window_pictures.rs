@@ -27,6 +27,18 @@ fn every_sheet_is_drawn_in_both_themes_and_sizes() {
 }
 
 #[test]
+fn the_least_window_holds_everything_that_must_stay_in_view() {
+    let mut window = whole::on_samples([900.0, 600.0]);
+    for (number, key) in (1..).zip(SHEETS) {
+        window.ctrl(key);
+        for words in ["Front curtain is short", "Lock out before reaching in", "Records"] {
+            assert!(window.shows(words), "{words}");
+        }
+        pictures::keep(&format!("window-least-{number}"), &window.harness.render().unwrap());
+    }
+}
+
+#[test]
 fn empty_states_say_what_to_do() {
     let size = SIZES[0];
     let mut window = whole::on(size, |_| {});

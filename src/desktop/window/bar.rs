@@ -14,6 +14,8 @@ use crate::document::History;
 
 /// Shows the bar.
 pub fn bar_ui(ui: &mut Ui, press: Option<&Press>, view: &ViewState, history: Option<&History>, wishes: &mut Wishes) {
+    // A narrow window gives the title its room from the list of rule sets.
+    let list_width = (ui.available_width() - 540.0).clamp(118.0, 190.0);
     ui.horizontal(|ui| {
         ui.set_min_height(30.0);
         ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
@@ -22,7 +24,7 @@ pub fn bar_ui(ui: &mut Ui, press: Option<&Press>, view: &ViewState, history: Opt
                 ui.separator();
                 let rules = history.document().settings.rules;
                 let id = egui::Id::unique("rule set");
-                if let Some(rules) = bare_choice_ui::<RuleSetId>(ui, id, "Rule set", 190.0, rules) {
+                if let Some(rules) = bare_choice_ui::<RuleSetId>(ui, id, "Rule set", list_width, rules) {
                     wishes.edit_plant("change the rule set", move |plant| plant.rules = rules);
                 }
                 ui.separator();
@@ -44,12 +46,13 @@ fn title_ui(ui: &mut Ui, press: Option<&Press>, view: &ViewState, history: Optio
         (None, Some(history)) => (history.document().settings.name.as_str(), String::new()),
         (None, None) => ("Slidehalt", String::new()),
     };
-    let room = ui.available_size() * egui::vec2(if words.is_empty() { 1.0 } else { 0.6 }, 1.0);
+    let room = ui.available_width();
+    let is_narrow = room < 200.0 || words.is_empty();
     ui.scope(|ui| {
-        ui.set_max_width(room.x);
+        ui.set_max_width(if is_narrow { room } else { room * 0.6 });
         ui.add(egui::Label::new(RichText::new(name).font(theme::strong(20.0))).truncate());
     });
-    if !words.is_empty() {
+    if !is_narrow {
         ui.add(egui::Label::new(RichText::new(words).size(15.0)).truncate());
     }
 }

@@ -116,8 +116,12 @@ impl Command {
     }
 
     /// The commands whose keys were pressed in this frame. Longer shortcuts are looked at first, since they hold the shorter.
+    ///
+    /// Text that is no part of the plant, such as a path, keeps an undo of its own: there Undo and Redo are left to the field.
     pub fn pressed(context: &egui::Context) -> Vec<Self> {
+        let is_left_to_field = super::widgets::has_own_undo(context);
         let mut commands: Vec<Self> = Self::ALL.to_vec();
+        commands.retain(|command| !(is_left_to_field && matches!(command, Self::Undo | Self::Redo)));
         commands.sort_by_key(|command| std::cmp::Reverse(command.shortcut().modifiers.shift));
         context.input_mut(|input| {
             let mut is_pressed = |command: &Self| command.shortcuts().any(|keys| input.consume_shortcut(&keys));

@@ -9,7 +9,7 @@ use calc::round::{Towards, time_text};
 use calc::safeguard::Safeguard;
 use calc::sentence;
 use calc::verdict::Assessment;
-use egui::{CollapsingHeader, Id, RichText, Ui};
+use egui::{Align, CollapsingHeader, Id, Layout, RichText, Ui};
 use figure::Role;
 
 use crate::window::context::SheetContext;
@@ -132,17 +132,23 @@ fn head_ui(ui: &mut Ui, card: &Card, drafts: &mut SafeguardsDrafts, wishes: &mut
     });
 }
 
+/// Width of one column of a card.
+const COLUMN: f32 = 430.0;
+
 fn body_ui(ui: &mut Ui, card: &Card, drafts: &mut SafeguardsDrafts, wishes: &mut Wishes) {
     let (cx, assessment) = (card.cx, card.assessment());
-    ui.horizontal_top(|ui| {
+    // Two columns where they fit, else one below the other.
+    let is_wide = ui.available_width() >= 2.0 * COLUMN + 16.0;
+    let layout = if is_wide { Layout::left_to_right(Align::Min) } else { Layout::top_down(Align::Min) };
+    ui.with_layout(layout, |ui| {
         ui.vertical(|ui| {
-            ui.set_width(430.0);
+            ui.set_width(COLUMN);
             kind_fields::kind_fields_ui(ui, card, &mut drafts.fields, wishes);
             measures::installed_ui(ui, card, &mut drafts.fields, wishes);
         });
         ui.add_space(16.0);
         ui.vertical(|ui| {
-            ui.set_width(430.0);
+            ui.set_width(COLUMN);
             measures::time_parts_ui(ui, card, &mut drafts.fields, wishes);
             if !cx.is_without_result {
                 allowed_ui(ui, assessment);

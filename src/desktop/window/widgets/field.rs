@@ -211,13 +211,30 @@ pub fn field_ui<T>(
         drafts.focus = None;
         response.request_focus();
     }
+    if response.has_focus() {
+        ui.data_mut(|data| data.insert_temp(entry_mark(), id));
+    }
     if response.gained_focus() {
         select_all(ui, &response, text.chars().count());
     }
     if let Some(refusal) = drafts.refusal(id) {
         response.clone().on_hover_text(refusal.to_string());
     }
-    settle(ui, id, &response, text, committed, drafts, read)
+    settle(ui, id, &response, text, committed, drafts, |text| {
+        check_characters(kind.label, text)?;
+        read(text)
+    })
+}
+
+/// Refuses characters that the program's own fonts lack, by name: what cannot be printed must not be found out when the record is.
+fn check_characters(label: &str, text: &str) -> Result<(), Refusal> {
+    let missing = theme::drawing_fonts().missing(text.trim(), figure::Weight::Regular);
+    if missing.is_empty() {
+        return Ok(());
+    }
+    let named: Vec<String> = missing.iter().map(|one| format!("{one} (U+{:04X})", u32::from(*one))).collect();
+    let remedy = format!("Leave out {}.", named.join(", "));
+    Err(Refusal::new(label, text.trim(), "of characters that can be shown and printed", remedy))
 }
 
 /// Room beside the digits; a narrow cell needs it all for them.
@@ -265,6 +282,19 @@ fn settle<T>(
             Some(Commit::Refused)
         }
     }
+}
+
+/// Under which the entry field that has the cursor is noted.
+fn entry_mark() -> Id {
+    Id::unique("entry field with the cursor")
+}
+
+/// Whether the cursor stands in a text that is typed straight away, such as a path or the find box, and not in an entry field,
+/// whose text becomes part of the plant.
+pub fn has_own_undo(context: &egui::Context) -> bool {
+    let Some(focused) = context.memory(|memory| memory.focused()) else { return false };
+    let is_entry = context.data(|data| data.get_temp::<Id>(entry_mark())) == Some(focused);
+    !is_entry && TextEdit::load_state(context, focused).is_some()
 }
 
 fn select_all(ui: &Ui, response: &Response, length: usize) {
@@ -335,4 +365,16 @@ pub fn moment_field(
 ) -> Option<Commit<Moment>> {
     let committed = current.map_or(String::new(), |moment| moment.to_string());
     field_ui(ui, id, kind.hint("year-month-day"), &committed, drafts, |text| Moment::parse(kind.label, text))
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_character_that_cannot_be_printed_is_refused_by_name() {
+        assert_eq!(check_characters("Description", "180 t ≥ 90° ½ µ ß é Ł → ₉₀"), Ok(()));
+        let refusal = check_characters("Description", "Press \u{2714}").unwrap_err();
+        assert!(refusal.to_string().contains("Leave out \u{2714} (U+2714)."), "{refusal}");
+    }
 }
